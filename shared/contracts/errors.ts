@@ -19,31 +19,67 @@ const define = <T extends Record<string, readonly [ErrorKind, string]>>(codes: T
 
 export const errorCodes = define({
   'request.invalid': ['invalid', 'Some fields need another look. Each is named below.'],
-  'request.unparsable': ['unparsable', 'The request is not valid JSON. Send a JSON body with content type application/json.'],
+  'request.unparsable': [
+    'unparsable',
+    'The request is not valid JSON. Send a JSON body with content type application/json.',
+  ],
   'request.too-large': ['unparsable', 'The request is larger than this address accepts.'],
   'request.not-found': ['not-found', 'There is nothing at this address.'],
-  'request.forgery-suspected': ['forbidden', 'This write did not come from a Saltmark page. Open the page again and repeat it there.'],
-  'request.internal': ['internal', 'Something failed on our side. Nothing was changed. Try again; if it stays, give the request id to your administrator.'],
-  'request.unavailable': ['unavailable', 'The database does not answer at the moment. Nothing was changed. Try again shortly.'],
-  'request.cursor-invalid': ['invalid', 'The list cursor is not one this server gave out. Start the list again without it.'],
+  'request.forgery-suspected': [
+    'forbidden',
+    'This write did not come from a Saltmark page. Open the page again and repeat it there.',
+  ],
+  'request.internal': [
+    'internal',
+    'Something failed on our side. Nothing was changed. Try again; if it stays, give the request id to your administrator.',
+  ],
+  'request.unavailable': [
+    'unavailable',
+    'The database does not answer at the moment. Nothing was changed. Try again shortly.',
+  ],
+  'request.cursor-invalid': [
+    'invalid',
+    'The list cursor is not one this server gave out. Start the list again without it.',
+  ],
   'request.too-many': ['too-many', 'Too many requests from here. Wait a minute and try again.'],
 
   'sessions.required': ['unauthenticated', 'Sign in first.'],
-  'sessions.credentials-wrong': ['unauthenticated', 'The e-mail address and password do not match. Check both and try again.'],
-  'sessions.locked': ['too-many', 'Sign-in is locked for this person after repeated wrong passwords. Wait a quarter of an hour, or ask an administrator.'],
+  'sessions.credentials-wrong': [
+    'unauthenticated',
+    'The e-mail address and password do not match. Check both and try again.',
+  ],
+  'sessions.locked': [
+    'too-many',
+    'Sign-in is locked for this person after repeated wrong passwords. Wait a quarter of an hour, or ask an administrator.',
+  ],
   'sessions.too-many': ['too-many', 'Too many sign-in attempts from here. Wait a few minutes and try again.'],
   'sessions.no-grants': ['forbidden', 'Your access has ended or was never granted. Ask an administrator.'],
 
   'users.not-found': ['not-found', 'No such person, or not one you may see.'],
   'users.email-taken': ['conflict', 'Somebody already signs in with this e-mail address.'],
   'users.password-wrong': ['invalid', 'The current password is not right.'],
-  'users.password-weak': ['invalid', 'Choose a longer password: at least 12 characters, not your address or a common phrase.'],
-  'users.token-invalid': ['invalid', 'This link was used already or has run out. Ask an administrator for a new one.'],
+  'users.password-weak': [
+    'invalid',
+    'Choose a longer password: at least 12 characters, not your address or a common phrase.',
+  ],
+  'users.token-invalid': [
+    'invalid',
+    'This link was used already or has run out. Ask an administrator for a new one.',
+  ],
   'users.forbidden': ['forbidden', 'Only an administrator manages people.'],
-  'users.last-administrator': ['conflict', 'Somebody must remain administrator of all sites. Name another one first.'],
-  'users.self-change': ['conflict', 'You cannot take away or deactivate your own access. Ask another administrator.'],
+  'users.last-administrator': [
+    'conflict',
+    'Somebody must remain administrator of all sites. Name another one first.',
+  ],
+  'users.self-change': [
+    'conflict',
+    'You cannot take away or deactivate your own access. Ask another administrator.',
+  ],
   'users.setup-done': ['conflict', 'The first administrator exists already. Sign in, or ask that person.'],
-  'users.changed-meanwhile': ['conflict', 'Somebody changed this person meanwhile. Reload and repeat your change.'],
+  'users.changed-meanwhile': [
+    'conflict',
+    'Somebody changed this person meanwhile. Reload and repeat your change.',
+  ],
 
   'memberships.not-found': ['not-found', 'No such grant.'],
   'memberships.exists': ['conflict', 'This person already has a role there. End it first, or change it.'],
@@ -53,14 +89,20 @@ export const errorCodes = define({
   'sites.not-found': ['not-found', 'No such site, or not one you may see.'],
   'sites.code-taken': ['conflict', 'Another site already has this code.'],
   'sites.forbidden': ['forbidden', 'Your role at this site does not allow this.'],
-  'sites.changed-meanwhile': ['conflict', 'Somebody changed this site meanwhile. Reload and repeat your change.'],
+  'sites.changed-meanwhile': [
+    'conflict',
+    'Somebody changed this site meanwhile. Reload and repeat your change.',
+  ],
   'sites.area-taken': ['conflict', 'This site already has an area of that name.'],
   'areas.not-found': ['not-found', 'No such area, or not one you may see.'],
 
   'points.not-found': ['not-found', 'No such measuring point, or not one you may see.'],
   'points.code-taken': ['conflict', 'Another measuring point already has this code.'],
   'points.forbidden': ['forbidden', 'Your role at this site does not allow this for the measuring point.'],
-  'points.changed-meanwhile': ['conflict', 'Somebody changed this measuring point meanwhile. Reload and repeat your change.'],
+  'points.changed-meanwhile': [
+    'conflict',
+    'Somebody changed this measuring point meanwhile. Reload and repeat your change.',
+  ],
   'points.occupied': ['conflict', 'A probe is installed there. Remove or move it first.'],
   'points.retired': ['conflict', 'This measuring point is retired.'],
   'points.already-held': ['conflict', 'Somebody holds this point already.'],
@@ -70,8 +112,14 @@ export const errorCodes = define({
   'probes.serial-taken': ['conflict', 'A probe with this serial number is registered already.'],
   'probes.tag-taken': ['conflict', 'Another probe carries this tag.'],
   'probes.forbidden': ['forbidden', 'Your role at this site does not allow this for the probe.'],
-  'probes.changed-meanwhile': ['conflict', 'Somebody changed this probe meanwhile. Reload and repeat your change.'],
-  'probes.retired': ['conflict', 'This probe is retired. Its history stays readable, but it cannot be used again.'],
+  'probes.changed-meanwhile': [
+    'conflict',
+    'Somebody changed this probe meanwhile. Reload and repeat your change.',
+  ],
+  'probes.retired': [
+    'conflict',
+    'This probe is retired. Its history stays readable, but it cannot be used again.',
+  ],
   'probes.already-installed': ['conflict', 'This probe is installed elsewhere. Move it instead.'],
   'probes.not-installed': ['conflict', 'This probe is not installed anywhere.'],
   'probes.time-impossible': ['invalid', 'The time lies in the future or before the probe’s last move.'],
@@ -85,7 +133,10 @@ export const errorCodes = define({
   'standards.not-found': ['not-found', 'No such lot.'],
   'standards.code-taken': ['conflict', 'Another lot already has this code.'],
   'standards.forbidden': ['forbidden', 'Your role does not allow changing reference solutions.'],
-  'standards.changed-meanwhile': ['conflict', 'Somebody changed this lot meanwhile. Reload and repeat your change.'],
+  'standards.changed-meanwhile': [
+    'conflict',
+    'Somebody changed this lot meanwhile. Reload and repeat your change.',
+  ],
   'standards.state-impossible': ['conflict', 'A recalled lot stays recalled.'],
 
   'checks.not-found': ['not-found', 'No such check, or not one you may see.'],
@@ -100,11 +151,17 @@ export const errorCodes = define({
   'audit-events.forbidden': ['forbidden', 'Your role does not read the audit trail.'],
   'settings.forbidden': ['forbidden', 'Only an administrator of all sites changes settings.'],
   'settings.unknown': ['not-found', 'No such setting.'],
-  'settings.changed-meanwhile': ['conflict', 'Somebody changed this setting meanwhile. Reload and repeat your change.'],
+  'settings.changed-meanwhile': [
+    'conflict',
+    'Somebody changed this setting meanwhile. Reload and repeat your change.',
+  ],
   'mails.forbidden': ['forbidden', 'Only an administrator reads the mail outbox.'],
   'mails.not-found': ['not-found', 'No such mail.'],
 
-  'reference.outside-domain': ['invalid', 'The equation is not known to hold there. The limits are named below.'],
+  'reference.outside-domain': [
+    'invalid',
+    'The equation is not known to hold there. The limits are named below.',
+  ],
 });
 
 export type ErrorCode = keyof typeof errorCodes;

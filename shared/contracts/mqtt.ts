@@ -3,7 +3,13 @@
  * answers. Unknown fields are kept raw and ignored. Numbers are JSON numbers in the unit named.
  */
 import { z } from 'zod';
-import { deviceCompensations, probeKinds, readingContexts, readingFlags, readingQualities } from './vocabulary.ts';
+import {
+  deviceCompensations,
+  probeKinds,
+  readingContexts,
+  readingFlags,
+  readingQualities,
+} from './vocabulary.ts';
 
 export const payloadVersion = 1;
 /** Larger messages are refused and quarantined. */
@@ -19,7 +25,11 @@ export const deviceName = z
   .regex(/^[a-z0-9][a-z0-9-]{3,39}$/, 'Use 4 to 40 lower-case letters, digits and hyphens.');
 
 /** Boot ids are time-ordered text (for instance ULID prefixes) and are compared as text. */
-export const bootId = z.string().min(4).max(40).regex(/^[0-9A-Za-z]+$/);
+export const bootId = z
+  .string()
+  .min(4)
+  .max(40)
+  .regex(/^[0-9A-Za-z]+$/);
 export const settingsHash = z.string().min(8).max(80);
 const sequence = z.number().int().min(0).max(Number.MAX_SAFE_INTEGER);
 const instant = z.iso.datetime({ offset: true });
@@ -102,7 +112,14 @@ export type EventMessage = z.infer<typeof eventMessage>;
 
 export const commandMessage = z.discriminatedUnion('do', [
   z.object({ v: z.literal(payloadVersion), id: z.string().max(64), do: z.literal('birth') }),
-  z.object({ v: z.literal(payloadVersion), id: z.string().max(64), do: z.literal('resend'), boot: bootId, from_n: sequence, to_n: sequence }),
+  z.object({
+    v: z.literal(payloadVersion),
+    id: z.string().max(64),
+    do: z.literal('resend'),
+    boot: bootId,
+    from_n: sequence,
+    to_n: sequence,
+  }),
   z.object({
     v: z.literal(payloadVersion),
     id: z.string().max(64),

@@ -65,7 +65,16 @@ export type ReadingContext = (typeof readingContexts)[number];
 export const readingQualities = ['good', 'doubtful', 'bad'] as const;
 export type ReadingQuality = (typeof readingQualities)[number];
 
-export const readingFlags = ['t_open', 't_short', 'over', 'under', 'hold', 'simulated', 'warmup', 'dry'] as const;
+export const readingFlags = [
+  't_open',
+  't_short',
+  'over',
+  'under',
+  'hold',
+  'simulated',
+  'warmup',
+  'dry',
+] as const;
 export type ReadingFlag = (typeof readingFlags)[number];
 
 /** In what state of the probe a KCl comparison was made. */
@@ -127,7 +136,11 @@ export const quarantineCodes = [
 ] as const;
 export type QuarantineCode = (typeof quarantineCodes)[number];
 
-export const noticeKinds = ['reading-content-differs', 'cell-constant-without-record', 'device-replaced'] as const;
+export const noticeKinds = [
+  'reading-content-differs',
+  'cell-constant-without-record',
+  'device-replaced',
+] as const;
 export type NoticeKind = (typeof noticeKinds)[number];
 
 export const probeEventKinds = [
