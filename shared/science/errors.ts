@@ -4,7 +4,7 @@
  */
 
 export type ScienceErrorCode =
-  'science.out-of-domain' | 'science.refused-model' | 'science.inconsistent-input';
+  'science.out-of-domain' | 'science.refused-model' | 'science.inconsistent-input' | 'science.invalid-input';
 
 /** What every refusal of the science has in common: a stable code and a plain sentence. */
 export class ScienceError extends Error {
@@ -71,6 +71,13 @@ export class InconsistentInputError extends ScienceError {
   constructor({ quantity, reason, advice }: { quantity: string; reason: string; advice?: string }) {
     super('science.inconsistent-input', `${quantity}: ${reason}.${advice === undefined ? '' : ` ${advice}`}`);
     this.quantity = quantity;
+  }
+}
+
+/** An input that is not a number in a range: an empty list, an unknown choice, lists of unequal length. */
+export class InvalidInputError extends ScienceError {
+  constructor(message: string) {
+    super('science.invalid-input', message);
   }
 }
 
