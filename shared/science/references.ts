@@ -247,6 +247,47 @@ const bibliography = {
     citation: 'NIST/SEMATECH e-Handbook of Statistical Methods, 6.3.2.3 CUSUM control charts.',
     provenance: 'worked-example',
   },
+  'nist-handbook': {
+    citation: 'NIST/SEMATECH e-Handbook of Statistical Methods, sections 1.3.6, 4.5 and 6.3.',
+    provenance: 'handbook',
+  },
+  'abramowitz-stegun': {
+    citation: 'M. Abramowitz, I. A. Stegun, Handbook of Mathematical Functions (1964), ch. 26.',
+    provenance: 'handbook',
+  },
+  bevington: {
+    citation:
+      'P. R. Bevington, D. K. Robinson, Data Reduction and Error Analysis for the Physical Sciences, 3rd ed. (2003), ch. 4 and 6.',
+    provenance: 'handbook',
+  },
+  'birge-1932': {
+    citation:
+      'R. T. Birge, The calculation of errors by the method of least squares, Phys. Rev. 40 (1932) 207.',
+    provenance: 'published',
+  },
+  'dersimonian-laird-1986': {
+    citation:
+      'R. DerSimonian, N. Laird, Meta-analysis in clinical trials, Control. Clin. Trials 7 (1986) 177.',
+    provenance: 'published',
+  },
+  'iso-13528': {
+    citation:
+      'ISO 13528:2022, Statistical methods for use in proficiency testing by interlaboratory comparison, E_n score.',
+    provenance: 'published',
+  },
+  'usgs-tm1-d3': {
+    citation:
+      'R. J. Wagner, R. W. Boulger, C. J. Oblinger, B. A. Smith, Guidelines and Standard Procedures for Continuous Water-Quality Monitors, USGS Techniques and Methods 1-D3 (2006).',
+    provenance: 'from-memory',
+    confidence: 'high',
+    note: 'Fouling is the change on cleaning, corrected for the change of the water meanwhile; drift is what remains in the reference solution.',
+  },
+  qartod: {
+    citation:
+      'IOOS QARTOD, Manual for Real-Time Quality Control of In-Situ Temperature and Salinity Data: gap, gross range, spike, rate of change, flat line and neighbour tests.',
+    provenance: 'published',
+    note: 'The tests are published; the default limits used here are common practice.',
+  },
   'nist-strd-norris': {
     citation: 'NIST Statistical Reference Datasets, Norris (linear regression).',
     provenance: 'published',
