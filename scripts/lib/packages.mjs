@@ -1,0 +1,11 @@
+/** Everything a command needs that is not there yet. */
+import { ensureDebianPackages } from './debian-packages.mjs';
+import { ensureNpmPackages, requireNode } from './npm-packages.mjs';
+import { makeDataFolder } from './paths.mjs';
+
+export async function ensurePackages({ debian = [], onStart } = {}) {
+  requireNode();
+  makeDataFolder();
+  await ensureNpmPackages({ onStart });
+  await ensureDebianPackages(debian, { onStart });
+}
