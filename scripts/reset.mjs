@@ -2,7 +2,6 @@
 import { createInterface } from 'node:readline/promises';
 import { readSettings } from './lib/environment.mjs';
 import { claimClone, openDatabase, prepareDatabase } from './lib/foundation.mjs';
-import { recreateDatabase } from './lib/demo-data.mjs';
 import { ensurePackages } from './lib/packages.mjs';
 import { Refusal, runEntryPoint, say } from './lib/say.mjs';
 import { supervise } from './lib/supervisor.mjs';
@@ -41,18 +40,12 @@ async function reset(supervisor) {
   }
   await ensurePackages({ debian: ['postgresql'], onStart: (child) => supervisor.onStart(child) });
   const opened = await openDatabase(supervisor, settings);
-  opened.cluster.remember({ demo: undefined });
-  await recreateDatabase(opened.cluster);
-  const { hasDemo } = await prepareDatabase(supervisor, settings, {
-    ...opened,
-    cluster: withoutMemory(opened.cluster),
-  });
+  // As after an interrupted load: what is there is dropped, and the load begins again.
+  opened.cluster.remember({ demo: 'loading' });
+  const { hasDemo } = await prepareDatabase(supervisor, settings, opened);
   say(
     hasDemo ? 'The demo is loaded afresh. Start it: npm start' : 'The database is empty. Start it: npm start',
   );
 }
-
-/** The handle was read before the reset: it must not remember the demo that has just been dropped. */
-const withoutMemory = (cluster) => ({ ...cluster, remembered: {} });
 
 await runEntryPoint(() => supervise(reset, { untilDone: true }));

@@ -255,7 +255,9 @@ export async function startCluster({ dir, port, fsync = true, log } = {}) {
       port: settings.port,
       folder,
       exited,
-      remembered: settings.facts ?? {},
+      get remembered() {
+        return settings.facts ?? {};
+      },
       remember(facts) {
         settings.facts = { ...settings.facts, ...facts };
         writeSettings(settingsFile, settings);
