@@ -1,0 +1,6 @@
+import { everyRole, type Policy } from '../../http/authorise.ts';
+
+/** The outbox may hold one-time links. */
+export const mailPolicy = {
+  read: ['administrator'],
+} satisfies Policy;
