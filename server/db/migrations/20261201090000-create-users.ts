@@ -11,6 +11,7 @@ export const createUsers: Migration = {
       failed_sign_ins integer not null default 0 check (failed_sign_ins >= 0),
       locked_until timestamptz,
       password_changed_at timestamptz,
+      last_sign_in_at timestamptz,
       created_at timestamptz not null default now(),
       deactivated_at timestamptz,
       version integer not null default 0
