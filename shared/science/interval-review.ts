@@ -252,5 +252,7 @@ export function plannedInterval(
   ];
   const shortest = candidates.reduce((best, next) => (next.intervalDays < best.intervalDays ? next : best));
   if (shortest.intervalDays >= minDays || shortest.decidedBy === 'ceiling') return shortest;
-  return { intervalDays: Math.min(minDays, ...ceilings), decidedBy: 'floor' };
+  const lowestCeiling = Math.min(...ceilings);
+  if (lowestCeiling < minDays) return { intervalDays: lowestCeiling, decidedBy: 'ceiling' };
+  return { intervalDays: minDays, decidedBy: 'floor' };
 }
