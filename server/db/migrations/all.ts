@@ -17,6 +17,7 @@ import { createNotices } from './20261201091300-create-notices.ts';
 import { createAuditEvents } from './20261201091400-create-audit-events.ts';
 import { createSettings } from './20261201091500-create-settings.ts';
 import { createMails } from './20261201091600-create-mails.ts';
+import { announceDirectoryChanges } from './20261201091700-announce-directory-changes.ts';
 
 export const migrations: readonly Migration[] = [
   createUsers,
@@ -36,4 +37,5 @@ export const migrations: readonly Migration[] = [
   createAuditEvents,
   createSettings,
   createMails,
+  announceDirectoryChanges,
 ];
