@@ -8,12 +8,22 @@ export const idParam = z.coerce.number().int().positive().max(2_147_483_647);
 export const instant = z.iso.datetime({ offset: true });
 /** Calendar day, `YYYY-MM-DD`. */
 export const day = z.iso.date();
+/** One line: no line breaks and no other control characters. */
+export const line = z
+  .string()
+  .trim()
+  .regex(/^\P{Cc}*$/u, 'Keep it on one line, without control characters.');
+/** PostgreSQL text cannot hold the null character. */
+const text = z
+  .string()
+  .trim()
+  .refine((value) => !value.includes('\0'), 'Leave out the null character.');
 /** A name people read: trimmed, one line. */
-export const shortText = z.string().trim().min(1).max(120);
+export const shortText = line.min(1).max(120);
 /** A few sentences. */
-export const longText = z.string().trim().max(4000);
+export const longText = text.max(4000);
 /** Why somebody did it: at least a few words, kept in the audit trail. */
-export const reason = z.string().trim().min(3).max(1000);
+export const reason = text.min(3).max(1000);
 
 export const idPath = z.object({ id: idParam });
 
@@ -21,7 +31,7 @@ export const idPath = z.object({ id: idParam });
 export const listQuery = z.object({
   limit: z.coerce.number().int().min(1).max(500).default(100),
   cursor: z.string().max(400).optional(),
-  q: z.string().trim().max(120).optional(),
+  q: line.max(120).optional(),
 });
 export type ListQuery = z.infer<typeof listQuery>;
 

@@ -1,10 +1,13 @@
 import { z } from 'zod';
-import { id, reason } from './common.ts';
+import { id, idParam, listQuery, reason } from './common.ts';
 import { deviceName } from './mqtt.ts';
 import { deviceSummary } from './probes.ts';
 
 export const device = deviceSummary.extend({ probeId: id });
 export type Device = z.infer<typeof device>;
+
+export const devicesQuery = listQuery.extend({ probeId: idParam.optional() });
+export type DevicesQuery = z.infer<typeof devicesQuery>;
 
 export const issueCredentials = z.object({ probeId: id, name: deviceName });
 export type IssueCredentials = z.infer<typeof issueCredentials>;

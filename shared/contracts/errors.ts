@@ -128,6 +128,7 @@ export const errorCodes = define({
   'devices.name-taken': ['conflict', 'Another device already has this name.'],
   'devices.forbidden': ['forbidden', 'Only an administrator of the site issues device credentials.'],
   'devices.exists': ['conflict', 'This probe already has working credentials. Replace or revoke them.'],
+  'devices.revoked': ['conflict', 'These credentials were withdrawn. Issue new ones for the probe.'],
   'devices.offline': ['unavailable', 'The device is not connected, so it cannot be asked now.'],
 
   'standards.not-found': ['not-found', 'No such lot.'],

@@ -26,7 +26,7 @@ const requirements = z.object({
   intervalMethod: z.enum(intervalMethods),
   criticality: z.enum(criticalities),
   hazardTags: z.array(z.enum(hazardTags)),
-  controlNote: longText.nullable().describe('what acts on this signal, in one sentence'),
+  controlNote: longText.max(1000).nullable().describe('what acts on this signal, in one sentence'),
 });
 
 const limitsInOrder = {
@@ -72,6 +72,11 @@ const code = z
   .toUpperCase()
   .regex(/^[A-Z0-9][A-Z0-9-]{1,23}$/, 'Use 2 to 24 letters, digits and hyphens.');
 
+/** The requirements as a whole, as they stand after a change. */
+export const pointRequirements = requirements
+  .refine(limitsInOrder.check, limitsInOrder.says)
+  .refine(coefficientGiven.check, coefficientGiven.says);
+
 export const createPoint = requirements
   .extend({ areaId: id, code })
   .refine(limitsInOrder.check, limitsInOrder.says)
@@ -81,8 +86,7 @@ export type CreatePoint = z.infer<typeof createPoint>;
 export const changePoint = requirements
   .partial()
   .extend({ areaId: id.optional(), reason, version })
-  .refine(limitsInOrder.check, limitsInOrder.says)
-  .refine(coefficientGiven.check, coefficientGiven.says);
+  .refine(limitsInOrder.check, limitsInOrder.says);
 export type ChangePoint = z.infer<typeof changePoint>;
 
 export const retirePoint = z.object({ reason, version });
@@ -94,6 +98,7 @@ export type HoldPoint = z.infer<typeof holdPoint>;
 export const pointsQuery = listQuery.extend({
   siteId: idParam.optional(),
   areaId: idParam.optional(),
-  free: z.enum(['1']).optional(),
+  free: z.enum(['1']).optional().describe('1 = only points without a probe'),
+  retired: z.enum(['1']).optional().describe('1 = the retired ones as well'),
 });
 export type PointsQuery = z.infer<typeof pointsQuery>;

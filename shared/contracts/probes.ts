@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { id, idParam, instant, listQuery, longText, reason, shortText, version } from './common.ts';
+import { id, idParam, instant, line, listQuery, longText, reason, shortText, version } from './common.ts';
 import { judgedReading, strip, trust } from './readings.ts';
 import {
   cellConstantOrigins,
@@ -11,7 +11,7 @@ import {
 } from './vocabulary.ts';
 
 const characteristics = z.object({
-  serial: z.string().trim().min(2).max(60),
+  serial: line.min(2).max(60),
   tag: z
     .string()
     .trim()
@@ -21,7 +21,7 @@ const characteristics = z.object({
   nominalCellConstantPerCm: z.number().positive().max(1000),
   rangeLowUsCm: z.number().min(0),
   rangeHighUsCm: z.number().positive(),
-  resolutionUsCm: z.number().min(0).nullable(),
+  resolutionUsCm: z.number().positive().nullable(),
   temperatureSensor: z.enum(temperatureSensors),
   deviceCompensation: z.enum(deviceCompensations),
   notes: longText.nullable(),
@@ -118,7 +118,7 @@ export type ChangeProbe = z.infer<typeof changeProbe>;
 export const installProbe = z.object({
   pointId: id,
   at: instant.optional(),
-  note: longText.nullable().default(null),
+  note: longText.max(1000).nullable().default(null),
   version,
 });
 export type InstallProbe = z.infer<typeof installProbe>;
@@ -145,6 +145,8 @@ export const probeEvent = z.object({
   key: z.string(),
   at: instant,
   kind: z.union([z.enum(probeEventKinds), z.literal('check')]),
+  pointId: id.nullable(),
+  checkId: id.nullable().describe('of a comparison'),
   title: z.string(),
   by: z.string().nullable(),
   detail: z.string().nullable(),

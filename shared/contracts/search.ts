@@ -1,7 +1,7 @@
 import { z } from 'zod';
-import { id } from './common.ts';
+import { id, line } from './common.ts';
 
-export const searchQuery = z.object({ q: z.string().trim().min(1).max(80) });
+export const searchQuery = z.object({ q: line.min(1).max(80) });
 export const searchHit = z.object({
   kind: z.enum(['probe', 'point']),
   id,

@@ -75,3 +75,4 @@ export type CreateStandard = z.infer<typeof createStandard>;
 export const changeStandardState = z.object({ state: z.enum(standardStates), reason, version });
 export type ChangeStandardState = z.infer<typeof changeStandardState>;
 export const standardsQuery = listQuery.extend({ state: z.enum(standardStates).optional() });
+export type StandardsQuery = z.infer<typeof standardsQuery>;
