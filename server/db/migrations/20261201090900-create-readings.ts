@@ -8,7 +8,8 @@ import type { Migration } from './migration.ts';
 // yet, so that nothing is ever lost; making the month moves those rows. The function runs as the owner of
 // the tables, so that the server itself needs no right to create anything, and fixes search_path so that
 // nobody can slip another table under it. readings_other is locked while a month is attached: a row that
-// arrived between the move and the attachment would otherwise stop it.
+// arrived between the move and the attachment would otherwise stop it. Behind a long reader it gives up
+// after ten seconds rather than hold up ingest; nothing is lost, and the job asks again.
 export const createReadings: Migration = {
   name: '20261201090900-create-readings',
   up: `
@@ -37,7 +38,8 @@ export const createReadings: Migration = {
     create table readings_other partition of readings default;
 
     create function ensure_reading_partitions(months_back integer, months_ahead integer) returns setof text
-    language plpgsql security definer set search_path = pg_catalog, public, pg_temp as $$
+    language plpgsql security definer
+    set search_path = pg_catalog, public, pg_temp set lock_timeout = '10s' as $$
     declare
       this_month constant timestamp := date_trunc('month', now() at time zone 'UTC');
       month_offset integer;

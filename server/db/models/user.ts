@@ -22,6 +22,7 @@ export class User extends Model<InferAttributes<User>, InferCreationAttributes<U
   declare failedSignIns: CreationOptional<number>;
   declare lockedUntil: Date | null;
   declare passwordChangedAt: Date | null;
+  declare lastSignInAt: Date | null;
   declare createdAt: CreationOptional<Date>;
   declare deactivatedAt: Date | null;
   declare version: CreationOptional<number>;
@@ -39,6 +40,7 @@ export function initUser(sequelize: Sequelize): void {
       failedSignIns: DataTypes.INTEGER,
       lockedUntil: DataTypes.DATE,
       passwordChangedAt: DataTypes.DATE,
+      lastSignInAt: DataTypes.DATE,
       createdAt: DataTypes.DATE,
       deactivatedAt: DataTypes.DATE,
       version: versionColumn(),
