@@ -20,7 +20,7 @@ function testEnvironment({ superuserUrl, ownerUrl, appUrl }) {
     'MQTT_PORT',
     'BIND',
     'DATABASE_URL',
-    'OWNER_DATABASE_URL',
+    'MIGRATIONS_DATABASE_URL',
     'MQTT_URL',
     'REDIS_URL',
     'SMTP_URL',

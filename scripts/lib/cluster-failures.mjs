@@ -21,7 +21,7 @@ const causes = [
   },
   {
     pattern:
-      /control file|pg_control|PANIC|invalid (?:primary )?checkpoint|could not (?:open|read|access|find) .*(?:file|directory)|invalid page|not a valid data directory|is not a database cluster directory|could not locate/i,
+      /control file|pg_control|PANIC|invalid (?:primary )?checkpoint|could not (?:open|read|access|find) .*(?:file|directory)|invalid page|does not exist|not a valid data directory|is not a database cluster directory|could not locate/i,
     refusal: (pgdata) =>
       new Refusal(`The database in ${pgdata} is damaged and cannot be opened.`, startAfresh(pgdata)),
   },

@@ -15,7 +15,7 @@ const newPassword = () => randomBytes(24).toString('base64url');
 export const newPasswords = () => ({ superuser: newPassword(), owner: newPassword(), app: newPassword() });
 
 /** `initdb` into a folder beside the final one, moved into place when complete: a break leaves nothing half done. */
-export async function initialiseFiles({ pgdata, account, binaries, superuserPassword, log }) {
+export async function initialiseFiles({ pgdata, account, binaries, superuserPassword, fsync, log }) {
   const unfinished = `${pgdata}.new`;
   rmSync(unfinished, { recursive: true, force: true });
   makePrivateFolder(unfinished, account);
@@ -26,26 +26,9 @@ export async function initialiseFiles({ pgdata, account, binaries, superuserPass
   if (account.uid !== undefined)
     for (const path of [secretFolder, secretFile]) chownSync(path, account.uid, account.gid);
   try {
-    const options = [
-      '-U',
-      roles.superuser,
-      '-A',
-      'scram-sha-256',
-      '-E',
-      'UTF8',
-      '--locale=C.UTF-8',
-      '--no-instructions',
-    ];
-    const code = await run(
-      join(binaries, 'initdb'),
-      ['-D', unfinished, ...options, `--pwfile=${secretFile}`],
-      {
-        ...account,
-        log,
-        cwd: '/',
-        detached: true,
-      },
-    );
+    const args = ['-D', unfinished, '-U', roles.superuser, '-A', 'scram-sha-256', `--pwfile=${secretFile}`];
+    args.push('-E', 'UTF8', '--locale=C.UTF-8', '--no-instructions', ...(fsync ? [] : ['--no-sync']));
+    const code = await run(join(binaries, 'initdb'), args, { ...account, log, cwd: '/', detached: true });
     if (code !== 0) throw startFailure({ pgdata, log });
   } finally {
     rmSync(secretFolder, { recursive: true, force: true });

@@ -126,7 +126,7 @@ async function clearLeftOvers(pgdata) {
   else rmSync(file, { force: true });
 }
 
-async function loadOrMakeSettings(file, { pgdata, account, binaries, port, log }) {
+async function loadOrMakeSettings(file, { pgdata, account, binaries, port, fsync, log }) {
   const known = readSettings(file);
   if (existsSync(pgdata)) {
     if (!known?.passwords) throw unreadableSettings(file, pgdata);
@@ -134,7 +134,14 @@ async function loadOrMakeSettings(file, { pgdata, account, binaries, port, log }
   }
   const settings = { port: port ?? (await freePort()), passwords: newPasswords(), ready: false };
   writeSettings(file, settings);
-  await initialiseFiles({ pgdata, account, binaries, superuserPassword: settings.passwords.superuser, log });
+  await initialiseFiles({
+    pgdata,
+    account,
+    binaries,
+    superuserPassword: settings.passwords.superuser,
+    fsync,
+    log,
+  });
   return settings;
 }
 
@@ -238,9 +245,9 @@ export async function startCluster({ dir, port, fsync = true, log } = {}) {
   try {
     const binaries = chooseBinaries(pgdata);
     await clearLeftOvers(pgdata);
-    const common = { pgdata, account, binaries, log: logFile };
+    const common = { pgdata, account, binaries, fsync, log: logFile };
     const settings = await loadOrMakeSettings(settingsFile, { ...common, port });
-    const child = await launchWithRetries({ ...common, settings, settingsFile, fsync, lock });
+    const child = await launchWithRetries({ ...common, settings, settingsFile, lock });
     const stop = stopper({ child, lock });
     const exited = new Promise((resolve) => child.once('exit', resolve));
     try {

@@ -58,11 +58,11 @@ export function serverEnvironment(settings, urls, env = process.env) {
     PORT: String(settings.port),
     MQTT_PORT: String(settings.mqttPort),
     BIND: settings.bind,
-    OWNER_DATABASE_URL: '',
+    MIGRATIONS_DATABASE_URL: '',
   };
 }
 
 export const ownerEnvironment = (settings, urls, env) => ({
   ...serverEnvironment(settings, urls, env),
-  OWNER_DATABASE_URL: urls.ownerUrl,
+  MIGRATIONS_DATABASE_URL: urls.ownerUrl,
 });

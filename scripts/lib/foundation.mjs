@@ -1,6 +1,6 @@
 /** What every command stands on: one at a time, packages, a database that is up to date, and its data. */
-import { relative } from 'node:path';
-import { join } from 'node:path';
+import { rmSync } from 'node:fs';
+import { join, relative } from 'node:path';
 import { startCluster } from './cluster.mjs';
 import { typescript } from './commands.mjs';
 import { demoState, hasNoUsers, loadDemo, recreateDatabase } from './demo-data.mjs';
@@ -27,7 +27,7 @@ export async function claimClone(supervisor, { address, what = 'Saltmark' } = {}
 export async function openDatabase(supervisor, settings) {
   if (settings.outsideDatabase) {
     const url = settings.outsideDatabase;
-    return { urls: { appUrl: url, ownerUrl: process.env.OWNER_DATABASE_URL || url } };
+    return { urls: { appUrl: url, ownerUrl: process.env.MIGRATIONS_DATABASE_URL || url } };
   }
   const log = join(logsFolder, 'postgres.log');
   const cluster = await step('Starting the database', () => startCluster({ dir: postgresFolder, log }));
@@ -43,16 +43,30 @@ export async function openDatabase(supervisor, settings) {
   return { urls: cluster, cluster };
 }
 
-export function migrate(supervisor, env) {
+const newerDatabase = (details) =>
+  new Refusal(
+    'The database was made by a newer Saltmark than this one.',
+    'Use that version again (git pull), or drop the data and begin afresh: npm run reset.',
+    { details },
+  );
+
+export async function migrate(supervisor, env) {
   const log = join(logsFolder, 'migrate.log');
-  return step('Bringing the database up to date', () =>
+  rmSync(log, { force: true });
+  const run = () =>
     supervisor.run(typescript('scripts/migrate.ts'), {
       env,
       log,
       failure: 'The database could not be brought up to date.',
-      wayOut: `See ${relative(root, log)}. If it was made by a newer Saltmark, use that version (git pull), or npm run reset to start afresh.`,
-    }),
-  );
+      wayOut: `See ${relative(root, log)}; nothing was half done, so it is safe to start again.`,
+    });
+  try {
+    await step('Bringing the database up to date', run);
+  } catch (error) {
+    if (error.details?.some((line) => line.includes('this release does not know')))
+      throw newerDatabase(error.details);
+    throw error;
+  }
 }
 
 /** Migrations, and the demo into a database that is new. Answers whether the demo is there. */
