@@ -68,6 +68,9 @@ export const createStandard = facts
       say('nominal', 'A molal, demal or molar basis needs its nominal value.');
     if (lot.medium === 'other' && lot.basis !== 'other')
       say('basis', 'Only aqueous KCl has a molal, demal or molar basis here.');
+    const rows = lot.temperatureTable ?? [];
+    if (rows.some((row, index) => index > 0 && row.temperatureC <= rows[index - 1]!.temperatureC))
+      say('temperatureTable', 'List each temperature once, lowest first.');
     if (lot.basis === 'other' && lot.temperatureTable === null)
       say('temperatureTable', 'Without a KCl basis the certificate’s temperature table is needed.');
   });
