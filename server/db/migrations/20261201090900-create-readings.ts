@@ -7,9 +7,9 @@ import type { Migration } from './migration.ts';
 // Partitions are calendar months in UTC. readings_other catches every row whose month has no partition
 // yet, so that nothing is ever lost; making the month moves those rows. The function runs as the owner of
 // the tables, so that the server itself needs no right to create anything, and fixes search_path so that
-// nobody can slip another table under it. readings_other is locked while a month is attached: a row that
-// arrived between the move and the attachment would otherwise stop it. Behind a long reader it gives up
-// after ten seconds rather than hold up ingest; nothing is lost, and the job asks again.
+// nobody can slip another table under it. Writers wait while months are made: one that had already chosen
+// readings_other for its rows would find them refused there. Behind a long reader the function gives up after
+// three seconds rather than hold up ingest; nothing is lost, and the job asks again.
 export const createReadings: Migration = {
   name: '20261201090900-create-readings',
   up: `
@@ -39,7 +39,7 @@ export const createReadings: Migration = {
 
     create function ensure_reading_partitions(months_back integer, months_ahead integer) returns setof text
     language plpgsql security definer
-    set search_path = pg_catalog, public, pg_temp set lock_timeout = '10s' as $$
+    set search_path = pg_catalog, public, pg_temp set lock_timeout = '3s' as $$
     declare
       this_month constant timestamp := date_trunc('month', now() at time zone 'UTC');
       month_offset integer;
@@ -61,6 +61,7 @@ export const createReadings: Migration = {
         upper_bound := (month_start + interval '1 month') at time zone 'UTC';
         execute format('create table public.%I (like public.readings including defaults including constraints)',
           partition_name);
+        lock table only public.readings in share row exclusive mode;
         lock table only public.readings_other in access exclusive mode;
         execute format(
           'with moved as (delete from only public.readings_other where at >= %L and at < %L returning *)

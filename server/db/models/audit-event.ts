@@ -25,8 +25,8 @@ export class AuditEvent extends Model<InferAttributes<AuditEvent>, InferCreation
   declare objectId: string | null;
   declare objectVersion: number | null;
   declare siteId: number | null;
-  declare oldValue: CreationOptional<unknown>;
-  declare newValue: CreationOptional<unknown>;
+  declare oldValue: unknown;
+  declare newValue: unknown;
   declare reason: string | null;
   declare source: CreationOptional<Record<string, unknown>>;
   declare previousHash: string;

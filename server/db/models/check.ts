@@ -45,7 +45,7 @@ export class Check extends Model<InferAttributes<Check>, InferCreationAttributes
   declare outcome: Outcome | null;
   declare probabilityOutside: number | null;
   declare acceptanceLimitPercent: number | null;
-  declare budget: CreationOptional<unknown>;
+  declare budget: unknown;
   declare referenceSource: string | null;
   declare at: Date;
   declare receivedAt: CreationOptional<Date>;

@@ -31,7 +31,7 @@ export class Standard extends Model<InferAttributes<Standard>, InferCreationAttr
   declare referenceTemperatureC: CreationOptional<number>;
   declare expandedUncertaintyUsCm: number | null;
   declare coverageFactor: number | null;
-  declare temperatureTable: CreationOptional<unknown>;
+  declare temperatureTable: unknown;
   declare traceability: CreationOptional<string>;
   declare isInHouse: CreationOptional<boolean>;
   declare issuedOn: string;
