@@ -1,4 +1,4 @@
-import { everyRole, type Policy } from '../../http/authorise.ts';
+import type { Policy } from '../../http/authorise.ts';
 
 /** Who reads the audit trail of a site. */
 export const auditEventPolicy = {

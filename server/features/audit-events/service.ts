@@ -47,7 +47,7 @@ function describeActor(
       actorId: actor.id ?? null,
       actorName: actor.name,
       actingRole: null,
-      source: asJson(actor.source),
+      source: asJson(actor.source) ?? {},
     };
   }
   const role: Role | null = roleAt(actor, siteId) ?? actor.grants[0]?.role ?? null;
@@ -84,8 +84,15 @@ export async function recordAuditEvent(
     reason: entry.reason ?? null,
     previousHash: head.hash,
   };
+  const { source, ...columns } = event;
   await AuditEvent.create(
-    { ...event, capturedAt: new Date(event.capturedAt), receivedAt: now, hash: hashOfEvent(event) },
+    {
+      ...columns,
+      source: source as Record<string, unknown>,
+      capturedAt: new Date(event.capturedAt),
+      receivedAt: now,
+      hash: hashOfEvent(event),
+    },
     { transaction },
   );
   return event.sequence;

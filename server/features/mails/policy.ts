@@ -1,4 +1,4 @@
-import { everyRole, type Policy } from '../../http/authorise.ts';
+import type { Policy } from '../../http/authorise.ts';
 
 /** The outbox may hold one-time links. */
 export const mailPolicy = {

@@ -1,4 +1,4 @@
-import { everyRole, type Policy } from '../../http/authorise.ts';
+import type { Policy } from '../../http/authorise.ts';
 
 /** Roles are granted by the administrator of the site concerned. */
 export const membershipPolicy = {

@@ -1,4 +1,4 @@
-import { everyRole, type Policy } from '../../http/authorise.ts';
+import type { Policy } from '../../http/authorise.ts';
 
 /** Raw device messages are the administrator’s. */
 export const quarantinePolicy = {

@@ -1,5 +1,5 @@
 /** Sign-in, its lock, and the person behind a session. */
-import { deleteSessions } from './queries.ts';
+import { deleteOtherSessions } from '../users/queries.ts';
 import type { Welcome } from '../../../shared/contracts/sessions.ts';
 import { AppError } from '../../errors.ts';
 import { Membership, Setting, User } from '../../db/models/index.ts';
@@ -117,7 +117,7 @@ export async function recordSignOut(parts: Parts, actor: Actor): Promise<void> {
 /** Ends every session of a person, on every device, and the live connections with them. */
 export async function endAllSessions(parts: Parts, userId: number, actor: Actor): Promise<void> {
   await inTransaction(parts.sequelize, async (transaction) => {
-    await deleteSessions(parts, userId, transaction);
+    await deleteOtherSessions(parts, userId, null, transaction);
     await recordAuditEvent(parts, transaction, actor, {
       action: 'sessions.ended-everywhere',
       objectKind: 'users',

@@ -1,4 +1,4 @@
-import { everyRole, type Policy } from '../../http/authorise.ts';
+import type { Policy } from '../../http/authorise.ts';
 
 /** People are the administrator’s. */
 export const userPolicy = {

@@ -1,0 +1,31 @@
+import type { Transaction } from 'sequelize';
+import type { Parts } from '../../parts.ts';
+
+/** Any constant nothing else uses: two first visitors at once become one. */
+const firstPersonLock = 4_280_002;
+
+export async function lockFirstPerson(
+  parts: Pick<Parts, 'sequelize'>,
+  transaction: Transaction,
+): Promise<void> {
+  await parts.sequelize.query('SELECT pg_advisory_xact_lock(:firstPersonLock)', {
+    transaction,
+    replacements: { firstPersonLock },
+  });
+}
+
+/** Ends a person's stored sessions, but for the one kept. */
+export async function deleteOtherSessions(
+  parts: Pick<Parts, 'sequelize'>,
+  userId: number,
+  keep: string | null,
+  transaction: Transaction,
+): Promise<void> {
+  await parts.sequelize.query(
+    `DELETE FROM sessions WHERE sess->'passport'->>'user' = :userId AND sid IS DISTINCT FROM :keep`,
+    {
+      transaction,
+      replacements: { userId: String(userId), keep },
+    },
+  );
+}
