@@ -168,3 +168,11 @@ function formatter(timeZone: string, kind: string, options: Intl.DateTimeFormatO
   formatters.set(key, made);
   return made;
 }
+
+/** Minutes a zone is ahead of UTC at that moment, summer time included. */
+export function zoneOffsetMinutes(moment: Moment, { timeZone = 'UTC' }: ZoneOption = {}): number {
+  const found = /([+\u2212])(\d\d):(\d\d)/.exec(formatOffset(moment, { timeZone }));
+  if (!found) return 0;
+  const minutes = Number(found[2]) * 60 + Number(found[3]);
+  return found[1] === '+' ? minutes : -minutes;
+}
