@@ -1,0 +1,421 @@
+/**
+ * The true conductivity of a bottle: what its certificate says at its temperature, and nothing the certificate does not know.
+ *
+ * A lot's own table is read between its rows and never beyond them. A certified value of aqueous KCl without a table follows the
+ * temperature SHAPE of its KCl basis. Any other liquid has one temperature only.
+ */
+import { cubicSpline, evaluateSpline } from './cubic-spline.ts';
+import {
+  InconsistentInputError,
+  InvalidInputError,
+  OutOfDomainError,
+  requireFinite,
+  requirePositive,
+} from './errors.ts';
+import { diluteKclTemperatureRatio, kclConcentrationAt25 } from './kcl-solutions.ts';
+import { kclStandardConductivity, kclStandardLabel } from './kcl-standards.ts';
+import type { KclBasis, KclNominal } from './kcl-standards.ts';
+import { citation, constant } from './references.ts';
+
+export type LotTemperatureRow = { temperatureC: number; conductivityUsCm: number };
+
+export type CertifiedLot = {
+  medium: 'kcl-aqueous' | 'other';
+  basis: KclBasis | 'other';
+  nominal: KclNominal | null;
+  /** At referenceTemperatureC; null when the bottle has only its basis and nominal value. */
+  certifiedConductivityUsCm: number | null;
+  referenceTemperatureC: number;
+  /** U of the certified value, µS/cm; null when the certificate states none. */
+  expandedUncertaintyUsCm: number | null;
+  /** k of that U; null is taken as 2. */
+  coverageFactor: number | null;
+  temperatureTable: readonly LotTemperatureRow[] | null;
+};
+
+export type LotInterpolation =
+  | 'certificate-table'
+  | 'certificate-value-only'
+  | 'kcl-standard-table'
+  | 'kcl-standard-shape'
+  | 'kcl-dilute-shape'
+  | 'kcl-between-standards-shape';
+
+export type LotReference = {
+  conductivityUsCm: number;
+  /** Of the value and of the reading between known temperatures, together. */
+  standardUncertaintyUsCm: number;
+  /** In words, for a record. */
+  source: string;
+  interpolation: LotInterpolation;
+  valueStandardUncertaintyUsCm: number;
+  interpolationStandardUncertaintyUsCm: number;
+  slopeUsCmPerK: number;
+};
+
+type Shape = { value: number; slope: number; relativeHalfWidth: number; interpolation: LotInterpolation };
+
+const DEFAULT_COVERAGE_FACTOR = constant(2, '', 'gum-2008').value;
+/** Bottles whose label states no uncertainty are sold to 1 %: half-width of a rectangular distribution. */
+const UNSTATED_RELATIVE_HALF_WIDTH = constant(0.01, 'relative', 'bench-practice').value;
+
+/** Curvature of any electrolyte's conductivity against temperature: twice that of KCl. */
+const CURVATURE_BOUND = constant(1e-4, 'relative per K²', 'pratt-2001').value;
+/** Part of the distance between curve and straight line that a spline through three or more rows may still be wrong by. */
+const SPLINE_ERROR_SHARE = constant(0.2, '', 'pratt-2001').value;
+
+/** How far the molal and demal shapes part, per K; the scaled limiting law and the blend between standards are twice as far off. */
+const STANDARD_SHAPE_PER_K = constant(2e-5, 'relative per K', 'oiml-r56').value;
+const MODEL_SHAPE_PER_K = constant(5e-5, 'relative per K', 'pratt-2001').value;
+
+/** An unknown liquid without a table is known at one temperature; this near to it, 2.5 %/K bounds the change not corrected for. */
+const FIXED_POINT_WITHIN_K = constant(0.2, 'K', 'bench-practice').value;
+const UNKNOWN_LIQUID_PER_K = constant(0.025, 'relative per K', 'bench-practice').value;
+const UNKNOWN_LIQUID_SLOPE_PER_K = constant(0.02, 'relative per K', 'bench-practice').value;
+
+/** A certificate whose table and value differ by more was copied wrongly. */
+const LARGEST_CONTRADICTION = constant(5e-3, 'relative', 'bench-practice').value;
+
+function standardOf(lot: CertifiedLot): { basis: KclBasis; nominal: KclNominal } | null {
+  if (lot.medium !== 'kcl-aqueous' || lot.basis === 'other' || lot.nominal === null) return null;
+  return { basis: lot.basis, nominal: lot.nominal };
+}
+
+/** The certificate's own table, between its rows. */
+function tableShape(table: readonly LotTemperatureRow[], temperatureC: number): Shape {
+  const x = table.map((row) => row.temperatureC);
+  const y = table.map((row) =>
+    requirePositive('conductivity in the certificate table', row.conductivityUsCm, 'µS/cm'),
+  );
+  const spline = cubicSpline(x, y);
+  const lower = x[0] as number;
+  const upper = x[x.length - 1] as number;
+  if (!(temperatureC >= lower && temperatureC <= upper)) {
+    throw new OutOfDomainError({
+      quantity: 'temperature of the solution',
+      value: temperatureC,
+      unit: '°C',
+      lower,
+      upper,
+      advice: "The lot's certificate has no value there: bring the solution to a temperature of its table.",
+    });
+  }
+  const { value, slope } = evaluateSpline(spline, temperatureC);
+  return {
+    value,
+    slope,
+    relativeHalfWidth: tableErrorBound(x, y, temperatureC, value),
+    interpolation: 'certificate-table',
+  };
+}
+
+function tableErrorBound(
+  x: readonly number[],
+  y: readonly number[],
+  temperatureC: number,
+  value: number,
+): number {
+  let i = 0;
+  while (i < x.length - 2 && temperatureC >= (x[i + 1] as number)) i += 1;
+  const [x0, x1, y0, y1] = [x[i], x[i + 1], y[i], y[i + 1]] as [number, number, number, number];
+  if (x.length === 2) return (CURVATURE_BOUND * (temperatureC - x0) * (x1 - temperatureC)) / 2;
+  const straight = y0 + ((y1 - y0) * (temperatureC - x0)) / (x1 - x0);
+  return (SPLINE_ERROR_SHARE * Math.abs(value - straight)) / value;
+}
+
+/** Conductivity of the lot's KCl standard; the certified value only scales it. */
+function standardShape(
+  { basis, nominal }: { basis: KclBasis; nominal: KclNominal },
+  t: number,
+  referenceC: number,
+): Shape {
+  const { conductivityUsCm, slopeUsCmPerK, interpolationRelativeHalfWidth } = kclStandardConductivity({
+    basis,
+    nominal,
+    temperatureC: t,
+  });
+  const relativeHalfWidth =
+    t === referenceC ? 0 : interpolationRelativeHalfWidth + STANDARD_SHAPE_PER_K * Math.abs(t - referenceC);
+  return {
+    value: conductivityUsCm,
+    slope: slopeUsCmPerK,
+    relativeHalfWidth,
+    interpolation: 'kcl-standard-shape',
+  };
+}
+
+const MOLAL_NOMINALS = [0.01, 0.1, 1] as const;
+const MOLAL_AT_25 = MOLAL_NOMINALS.map(
+  (nominal) => kclStandardConductivity({ basis: 'molal', nominal, temperatureC: 25 }).conductivityUsCm,
+) as [number, number, number];
+
+function molalRatio(nominal: KclNominal, temperatureC: number): { ratio: number; ratioPerK: number } {
+  const { conductivityUsCm, slopeUsCmPerK } = kclStandardConductivity({
+    basis: 'molal',
+    nominal,
+    temperatureC,
+  });
+  const at25 = MOLAL_AT_25[MOLAL_NOMINALS.indexOf(nominal)] as number;
+  return { ratio: conductivityUsCm / at25, ratioPerK: slopeUsCmPerK / at25 };
+}
+
+/** kappa(t)/kappa(25) of aqueous KCl of any strength to 1 mol/kg: the scaled limiting law when dilute, a blend of columns above. */
+function kclRatio(
+  at25UsCm: number,
+  temperatureC: number,
+): { ratio: number; ratioPerK: number; isDilute: boolean } {
+  const [weak, middle, strong] = MOLAL_AT_25;
+  if (at25UsCm <= weak) {
+    const concentrationMolL = kclConcentrationAt25(at25UsCm);
+    return { ...diluteKclTemperatureRatio({ concentrationMolL, temperatureC }), isDilute: true };
+  }
+  if (at25UsCm > strong) {
+    throw new OutOfDomainError({
+      quantity: 'conductivity at 25 °C of aqueous KCl without a temperature table',
+      value: at25UsCm,
+      unit: 'µS/cm',
+      lower: 0,
+      upper: strong,
+      advice: "Enter the temperature table of the lot's certificate.",
+    });
+  }
+  const [lower, upper, from, to] =
+    at25UsCm <= middle ? ([0.01, 0.1, weak, middle] as const) : ([0.1, 1, middle, strong] as const);
+  const share = Math.log(at25UsCm / from) / Math.log(to / from);
+  const a = molalRatio(lower, temperatureC);
+  const b = molalRatio(upper, temperatureC);
+  return {
+    ratio: a.ratio + share * (b.ratio - a.ratio),
+    ratioPerK: a.ratioPerK + share * (b.ratioPerK - a.ratioPerK),
+    isDilute: false,
+  };
+}
+
+/** The conductivity at 25 °C of a KCl lot certified at another temperature; the ratio hardly depends on it, so few turns do. */
+function certifiedAt25(certifiedUsCm: number, referenceC: number): number {
+  if (referenceC === 25) return certifiedUsCm;
+  const TURNS = 3;
+  let at25 = certifiedUsCm / molalRatio(0.01, referenceC).ratio;
+  for (let turn = 0; turn < TURNS; turn += 1) at25 = certifiedUsCm / kclRatio(at25, referenceC).ratio;
+  return at25;
+}
+
+function anyKclShape(certifiedUsCm: number, temperatureC: number, referenceC: number): Shape {
+  const at25 = certifiedAt25(certifiedUsCm, referenceC);
+  const { ratio, ratioPerK, isDilute } = kclRatio(at25, temperatureC);
+  return {
+    value: at25 * ratio,
+    slope: at25 * ratioPerK,
+    relativeHalfWidth: MODEL_SHAPE_PER_K * Math.abs(temperatureC - referenceC),
+    interpolation: isDilute ? 'kcl-dilute-shape' : 'kcl-between-standards-shape',
+  };
+}
+
+function fixedPoint(certifiedUsCm: number, temperatureC: number, referenceC: number): Shape {
+  const apart = Math.abs(temperatureC - referenceC);
+  if (!(apart <= FIXED_POINT_WITHIN_K)) {
+    throw new OutOfDomainError({
+      quantity: 'temperature of the solution',
+      value: temperatureC,
+      unit: '°C',
+      lower: referenceC - FIXED_POINT_WITHIN_K,
+      upper: referenceC + FIXED_POINT_WITHIN_K,
+      advice:
+        "This liquid is not aqueous KCl and its certificate has no temperature table: bring it to the certificate's temperature.",
+    });
+  }
+  return {
+    value: certifiedUsCm,
+    slope: UNKNOWN_LIQUID_SLOPE_PER_K * certifiedUsCm,
+    relativeHalfWidth: UNKNOWN_LIQUID_PER_K * apart,
+    interpolation: 'certificate-value-only',
+  };
+}
+
+/** Relative standard uncertainty of the certified value. */
+function certifiedUncertainty(lot: CertifiedLot, valueUsCm: number): number {
+  if (lot.expandedUncertaintyUsCm === null) return UNSTATED_RELATIVE_HALF_WIDTH / Math.sqrt(3);
+  const expanded = requirePositive('expanded uncertainty of the lot', lot.expandedUncertaintyUsCm, 'µS/cm');
+  const k = requirePositive('coverage factor of the lot', lot.coverageFactor ?? DEFAULT_COVERAGE_FACTOR, '');
+  return expanded / k / valueUsCm;
+}
+
+function assemble(
+  shape: Shape,
+  value: number,
+  slope: number,
+  relativeU: number,
+  source: string,
+): LotReference {
+  const valueU = relativeU * value;
+  const interpolationU = (shape.relativeHalfWidth * value) / Math.sqrt(3);
+  return {
+    conductivityUsCm: value,
+    standardUncertaintyUsCm: Math.hypot(valueU, interpolationU),
+    source,
+    interpolation: shape.interpolation,
+    valueStandardUncertaintyUsCm: valueU,
+    interpolationStandardUncertaintyUsCm: interpolationU,
+    slopeUsCmPerK: slope,
+  };
+}
+
+function byTable(lot: CertifiedLot, table: readonly LotTemperatureRow[], temperatureC: number): LotReference {
+  const shape = tableShape(table, temperatureC);
+  const nearest = table.reduce((best, row) =>
+    Math.abs(row.temperatureC - lot.referenceTemperatureC) <
+    Math.abs(best.temperatureC - lot.referenceTemperatureC)
+      ? row
+      : best,
+  );
+  const certified = lot.certifiedConductivityUsCm ?? nearest.conductivityUsCm;
+  requirePositive('certified conductivity', certified, 'µS/cm');
+  if (
+    nearest.temperatureC === lot.referenceTemperatureC &&
+    Math.abs(nearest.conductivityUsCm / certified - 1) > LARGEST_CONTRADICTION
+  ) {
+    throw new InconsistentInputError({
+      quantity: 'Lot certificate',
+      reason: `it certifies ${certified} µS/cm at ${lot.referenceTemperatureC} °C and its table says ${nearest.conductivityUsCm}`,
+      advice: 'Compare both with the certificate.',
+    });
+  }
+  return assemble(
+    shape,
+    shape.value,
+    shape.slope,
+    certifiedUncertainty(lot, certified),
+    "The lot's certificate, its own temperature table",
+  );
+}
+
+function byCertifiedValue(lot: CertifiedLot, certifiedUsCm: number, temperatureC: number): LotReference {
+  const certified = requirePositive('certified conductivity', certifiedUsCm, 'µS/cm');
+  const referenceC = lot.referenceTemperatureC;
+  const relativeU = certifiedUncertainty(lot, certified);
+  if (lot.medium !== 'kcl-aqueous') {
+    const shape = fixedPoint(certified, temperatureC, referenceC);
+    return assemble(shape, shape.value, shape.slope, relativeU, "The lot's certificate, its certified value");
+  }
+  const standard = standardOf(lot);
+  if (standard === null) {
+    const shape = anyKclShape(certified, temperatureC, referenceC);
+    return assemble(
+      shape,
+      shape.value,
+      shape.slope,
+      relativeU,
+      "The lot's certificate, temperature shape of aqueous KCl of that strength",
+    );
+  }
+  const shape = standardShape(standard, temperatureC, referenceC);
+  const scale =
+    certified / kclStandardConductivity({ ...standard, temperatureC: referenceC }).conductivityUsCm;
+  const source = `The lot's certificate, temperature shape of KCl ${standard.nominal} ${standard.basis}`;
+  return assemble(shape, shape.value * scale, shape.slope * scale, relativeU, source);
+}
+
+/** A lot without any certified value: the table of its basis, with the larger of the table's and the lot's own uncertainty. */
+function byStandard(lot: CertifiedLot, temperatureC: number): LotReference {
+  const standard = standardOf(lot);
+  if (standard === null) {
+    throw new InvalidInputError(
+      'This lot has neither a certified value, nor a temperature table, nor a KCl basis with 0.01, 0.1 or 1: enter one of them.',
+    );
+  }
+  const at = kclStandardConductivity({ ...standard, temperatureC });
+  const own =
+    lot.expandedUncertaintyUsCm === null ? 0 : certifiedUncertainty(lot, at25OrReference(standard, lot));
+  const shape: Shape = {
+    value: at.conductivityUsCm,
+    slope: at.slopeUsCmPerK,
+    relativeHalfWidth: at.interpolationRelativeHalfWidth,
+    interpolation: 'kcl-standard-table',
+  };
+  const relativeU = Math.max(at.relativeStandardUncertainty, own);
+  return assemble(shape, shape.value, shape.slope, relativeU, citation(at.source));
+}
+
+const at25OrReference = (standard: { basis: KclBasis; nominal: KclNominal }, lot: CertifiedLot): number =>
+  kclStandardConductivity({ ...standard, temperatureC: lot.referenceTemperatureC }).conductivityUsCm;
+
+/**
+ * The conductivity that a lot of reference solution has at a temperature.
+ *
+ * with a table: cubic spline through its rows, inside them only. Certified KCl without a table: kappa_cert s(t)/s(t_ref), s the shape
+ * of the lot's basis (or of KCl of that strength). KCl without a certificate: kclStandardConductivity. Other liquids without a
+ * table: the certified value within 0.2 K of its temperature
+ *
+ * @param options.lot medium, basis, nominal, certified value in µS/cm with U and k, reference temperature in °C, temperature table or null
+ * @param options.temperatureC temperature of the solution, °C: inside the table, or 0 to 50 for KCl without one
+ * @returns conductivity and standard uncertainty in µS/cm, the two parts of that uncertainty, slope in µS/cm per K, source and interpolation
+ * @throws OutOfDomainError outside the table or range, InconsistentInputError when table and certified value differ by over 0.5 %,
+ *   InvalidInputError for a lot that states no value at all
+ * Accuracy: the certificate's U/k (k = 2 when it states none; 1 % half-width when it states no U), and the interpolation's.
+ * Source: the certificate; pratt-2001 and oiml-r56 for the shapes.
+ * @example lotReferenceConductivity({ lot: { medium: 'kcl-aqueous', basis: 'molal', nominal: 0.01, certifiedConductivityUsCm: 1409, referenceTemperatureC: 25, expandedUncertaintyUsCm: 2.8, coverageFactor: 2, temperatureTable: null }, temperatureC: 20 }).conductivityUsCm // ≈ 1273.73
+ */
+export function lotReferenceConductivity(options: { lot: CertifiedLot; temperatureC: number }): LotReference {
+  const { lot, temperatureC } = options;
+  requireFinite('temperature of the solution', temperatureC, '°C');
+  requireFinite('reference temperature of the lot', lot.referenceTemperatureC, '°C');
+  if (lot.temperatureTable !== null) return byTable(lot, lot.temperatureTable, temperatureC);
+  if (lot.certifiedConductivityUsCm !== null)
+    return byCertifiedValue(lot, lot.certifiedConductivityUsCm, temperatureC);
+  return byStandard(lot, temperatureC);
+}
+
+/**
+ * The name of a lot that cannot be mistaken for another basis: nominal, basis and the value it stands for.
+ *
+ * @param options.lot as lotReferenceConductivity
+ * @returns text
+ * @throws InvalidInputError for a lot that states no value at all
+ * Accuracy: the certified value as stated.
+ * Source: the certificate.
+ * @example lotLabel({ lot: { medium: 'kcl-aqueous', basis: 'other', nominal: null, certifiedConductivityUsCm: 84, referenceTemperatureC: 25, expandedUncertaintyUsCm: 0.8, coverageFactor: 2, temperatureTable: null } }) // "KCl, 84 µS/cm at 25 °C"
+ */
+export function lotLabel({ lot }: { lot: CertifiedLot }): string {
+  const standard = standardOf(lot);
+  const liquid = lot.medium === 'kcl-aqueous' ? 'KCl' : 'Other liquid';
+  const name = standard === null ? liquid : (kclStandardLabel(standard).split(',')[0] as string);
+  if (lot.certifiedConductivityUsCm !== null) {
+    return `${name}, ${lot.certifiedConductivityUsCm} µS/cm at ${lot.referenceTemperatureC} °C`;
+  }
+  if (standard !== null) return kclStandardLabel(standard);
+  const { conductivityUsCm } = lotReferenceConductivity({ lot, temperatureC: lot.referenceTemperatureC });
+  return `${name}, ${Math.round(conductivityUsCm * 100) / 100} µS/cm at ${lot.referenceTemperatureC} °C`;
+}
+
+/**
+ * The other basis that a certified value fits better than the basis on the label: demal taken for molal, molal for molar.
+ *
+ * compares the certified value with the three bases' values at its temperature
+ *
+ * @param options.lot as lotReferenceConductivity
+ * @returns the basis it fits within 0.1 % while the stated one is further than 0.2 % away, or null
+ * @throws OutOfDomainError when the reference temperature is outside 0 to 50 °C
+ * Accuracy: 0.01 mol/kg and 0.01 D are too alike to be told apart.
+ * Source: pratt-2001, oiml-r56, juhasz-marsh-1981.
+ * @example suspectedBasis({ lot: { medium: 'kcl-aqueous', basis: 'molal', nominal: 0.01, certifiedConductivityUsCm: 1413, referenceTemperatureC: 25, expandedUncertaintyUsCm: 5, coverageFactor: 2, temperatureTable: null } }) // "molar"
+ */
+export function suspectedBasis({ lot }: { lot: CertifiedLot }): KclBasis | null {
+  const standard = standardOf(lot);
+  const certified = lot.certifiedConductivityUsCm;
+  if (standard === null || certified === null) return null;
+  const distance = (basis: KclBasis): number => {
+    const at = kclStandardConductivity({
+      basis,
+      nominal: standard.nominal,
+      temperatureC: lot.referenceTemperatureC,
+    });
+    return Math.abs(certified / at.conductivityUsCm - 1);
+  };
+  if (distance(standard.basis) <= BASIS_DOUBTED_FROM) return null;
+  return (
+    (['molal', 'demal', 'molar'] as const).find((basis) => distance(basis) <= BASIS_RECOGNISED_WITHIN) ?? null
+  );
+}
+
+const BASIS_DOUBTED_FROM = constant(2e-3, 'relative', 'bench-practice').value;
+const BASIS_RECOGNISED_WITHIN = constant(1e-3, 'relative', 'bench-practice').value;
