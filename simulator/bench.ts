@@ -9,7 +9,8 @@ export interface ReferenceSolution {
   basis: StandardBasis;
   /** mol/kg, demal or mol/L by the basis; null when only the certificate's table describes the solution. */
   nominal: 0.01 | 0.1 | 1 | null;
-  certified25UsCm: number;
+  /** Null where the basis says it all: the published value is taken as certified. */
+  certified25UsCm: number | null;
   table: { temperatureC: number; conductivityUsCm: number }[] | null;
   deviation: number;
 }
@@ -53,8 +54,9 @@ export function certifiedConductivity(solution: ReferenceSolution, temperatureC:
   if (basis === 'other' || nominal === null) {
     throw new RangeError(`Solution ${solution.code} has neither a KCl basis nor a table; give one of them.`);
   }
-  const at25 = kclStandardConductivity({ basis, nominal, temperatureC: 25 }).conductivityUsCm;
   const at = kclStandardConductivity({ basis, nominal, temperatureC }).conductivityUsCm;
+  if (solution.certified25UsCm === null) return at;
+  const at25 = kclStandardConductivity({ basis, nominal, temperatureC: 25 }).conductivityUsCm;
   return at * (solution.certified25UsCm / at25);
 }
 
