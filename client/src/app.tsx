@@ -1,20 +1,21 @@
 import { QueryClientProvider } from '@tanstack/react-query';
 import { BrowserRouter } from 'react-router-dom';
-import { AppShell } from './components/layout/app-shell.tsx';
-import { UnknownAddress } from './components/layout/unknown-address.tsx';
 import { ToastProvider } from './components/ui/toast.tsx';
+import { currentSession } from './features/sessions/api.ts';
 import { createQueryClient } from './lib/query-client.ts';
+import { AppRoutes } from './router.tsx';
 
-const queryClient = createQueryClient();
+/** Any answer that says 401 ends the session here too: the shell then leads to the sign-in page and back. */
+const queryClient = createQueryClient({
+  onSignedOut: () => queryClient.setQueryData(currentSession().queryKey, null),
+});
 
 export function App() {
   return (
     <QueryClientProvider client={queryClient}>
       <ToastProvider>
         <BrowserRouter>
-          <AppShell home="/" areas={[]} person={{ name: '', role: '', items: [] }} isLive={false}>
-            <UnknownAddress home="/" />
-          </AppShell>
+          <AppRoutes />
         </BrowserRouter>
       </ToastProvider>
     </QueryClientProvider>

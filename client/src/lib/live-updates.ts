@@ -7,6 +7,9 @@ import { socket } from './socket.ts';
 
 export type ConnectionState = 'connecting' | 'connected' | 'lost';
 
+/** After a refusal; a lost network is retried by the client itself, with growing pauses. */
+const RETRY_MS = 3000;
+
 let connection: { state: ConnectionState; since: number } = { state: 'connecting', since: Date.now() };
 const connectionListeners = new Set<() => void>();
 /** How many parts of the page watch a room; it is left when the last one goes. */
@@ -27,7 +30,18 @@ export function startLiveUpdates(queryClient: QueryClient): () => void {
     if (wasConnected) void queryClient.invalidateQueries();
     wasConnected = true;
   };
-  const onLost = () => setConnection('lost');
+  let retry: ReturnType<typeof setTimeout> | null = null;
+  const onLost = () => {
+    setConnection('lost');
+    if (socket.active || retry !== null) return;
+    // The server ended or refused this connection, after which the client would not try again: rights have changed,
+    // or the session is over, and the next answer about the session says which.
+    invalidate('sessions');
+    retry = setTimeout(() => {
+      retry = null;
+      socket.connect();
+    }, RETRY_MS);
+  };
 
   socket.on('connect', onConnect);
   socket.on('disconnect', onLost);
@@ -36,6 +50,7 @@ export function startLiveUpdates(queryClient: QueryClient): () => void {
   socket.on('readings', receiveReadings);
   socket.connect();
   return () => {
+    if (retry !== null) clearTimeout(retry);
     socket.off('connect', onConnect);
     socket.off('disconnect', onLost);
     socket.off('connect_error', onLost);

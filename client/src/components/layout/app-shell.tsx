@@ -12,6 +12,8 @@ import { ConnectionBanner } from './connection-banner.tsx';
 export interface RailArea {
   label: string;
   to: string;
+  /** Where the addresses of this area begin, when they do not all begin with `to`. */
+  under?: readonly string[];
   /** A small figure beside the name: open alerts. */
   count?: number;
 }
@@ -97,8 +99,9 @@ function AreaLinks({ areas, pathname }: { areas: readonly RailArea[]; pathname: 
 
 /** The area whose address begins the present one; the longest wins. */
 export function currentArea(areas: readonly RailArea[], pathname: string): RailArea | undefined {
+  const isUnder = (start: string) => pathname === start || pathname.startsWith(start.replace(/\/$/, '') + '/');
   return areas
-    .filter((area) => pathname === area.to || pathname.startsWith(area.to.replace(/\/$/, '') + '/'))
+    .filter((area) => (area.under ?? [area.to]).some(isUnder))
     .sort((a, b) => b.to.length - a.to.length)[0];
 }
 
@@ -164,7 +167,8 @@ function useFocusOnNewPage(main: React.RefObject<HTMLElement | null>, pathname: 
   useEffect(() => {
     if (last.current === pathname) return;
     last.current = pathname;
-    main.current?.focus({ preventScroll: true });
+    // The page's own heading may have taken the focus already.
+    if (!main.current?.contains(document.activeElement)) main.current?.focus({ preventScroll: true });
     window.scrollTo(0, 0);
   }, [main, pathname]);
 }

@@ -1,6 +1,6 @@
 import { useLayoutEffect, useRef } from 'react';
 import type { Outcome } from '../../../../shared/contracts/vocabulary.ts';
-import { useIsNarrow } from '../../lib/use-is-narrow.ts';
+import { useIsNarrow } from '../../lib/use-width.ts';
 import type { StripGeometry, StripInput, StripResult } from './strip-geometry.ts';
 import { stripGeometry } from './strip-geometry.ts';
 import type { StripSize } from './strip-sizes.ts';

@@ -1,5 +1,5 @@
 import type { ReactNode } from 'react';
-import { useIsNarrow } from '../../lib/use-is-narrow.ts';
+import { useIsNarrow } from '../../lib/use-width.ts';
 import type { LedgerBaseProps } from './ledger-parts.tsx';
 import { gridStyle, LedgerHead, LedgerRow } from './ledger-parts.tsx';
 import { VisuallyHidden } from './visually-hidden.tsx';

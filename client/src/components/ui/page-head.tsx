@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react';
 import { Link } from 'react-router-dom';
 import { useDocumentTitle } from '../../lib/use-document-title.ts';
+import { useHeadingFocus } from '../../lib/use-heading-focus.ts';
 import { classNames } from './button.tsx';
 
 export interface PageHeadProps {
@@ -17,9 +18,12 @@ export interface PageHeadProps {
 /** Name | sentence | clock. Every page opens with it. */
 export function PageHead({ name, sentence, aside, isNamedInRail = false }: PageHeadProps) {
   useDocumentTitle(name);
+  const heading = useHeadingFocus();
   return (
     <div className={classNames('page-head', isNamedInRail && 'is-named-in-rail')}>
-      <h1>{name}</h1>
+      <h1 ref={heading} tabIndex={-1}>
+        {name}
+      </h1>
       <p className="page-head-sentence">{sentence}</p>
       {aside}
     </div>

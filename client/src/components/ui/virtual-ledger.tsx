@@ -1,7 +1,7 @@
 import { useWindowVirtualizer } from '@tanstack/react-virtual';
 import type { ReactNode } from 'react';
 import { useEffect, useLayoutEffect, useRef, useState } from 'react';
-import { useIsNarrow } from '../../lib/use-is-narrow.ts';
+import { useIsNarrow } from '../../lib/use-width.ts';
 import type { LedgerBaseProps } from './ledger-parts.tsx';
 import { gridStyle, LedgerHead, LedgerRow } from './ledger-parts.tsx';
 

@@ -1,0 +1,49 @@
+import type { RefObject } from 'react';
+import { useEffect, useState } from 'react';
+import { HttpProblem } from './http.ts';
+
+export interface Submission {
+  isPending: boolean;
+  /** The refusal as a whole, when no single field is to blame. */
+  refusal: string | null;
+  /** What is wrong with one field, by its contract path. */
+  issueFor: (path: string) => string | undefined;
+  /** Runs the write once; resolves to whether it was accepted. */
+  submit: (write: () => Promise<unknown>) => Promise<boolean>;
+}
+
+/**
+ * The life of one form: pending, refused field by field, or done. The server is the judge; its sentences stand beside
+ * the fields they name, and the first such field takes the focus.
+ */
+export function useSubmission(form?: RefObject<HTMLElement | null>): Submission {
+  const [isPending, setIsPending] = useState(false);
+  const [error, setError] = useState<unknown>(null);
+  useEffect(() => {
+    if (error) form?.current?.querySelector<HTMLElement>('[aria-invalid="true"]')?.focus();
+  }, [error, form]);
+  const problem = error instanceof HttpProblem ? error : null;
+  return {
+    isPending,
+    refusal: error && !(problem && problem.issues.length > 0) ? sentenceOf(error) : null,
+    issueFor: (path) => problem?.issueFor(path),
+    submit: async (write) => {
+      if (isPending) return false;
+      setIsPending(true);
+      setError(null);
+      try {
+        await write();
+        return true;
+      } catch (failure) {
+        setError(failure);
+        return false;
+      } finally {
+        setIsPending(false);
+      }
+    },
+  };
+}
+
+function sentenceOf(error: unknown): string {
+  return error instanceof Error ? error.message : 'This could not be done. Try again.';
+}

@@ -1,0 +1,47 @@
+import type { ComponentType } from 'react';
+import { lazy, Suspense } from 'react';
+import { Navigate, Route, Routes } from 'react-router-dom';
+import { UnknownAddress } from './components/layout/unknown-address.tsx';
+import { paths } from './paths.ts';
+import { SignedInLayout } from './routes/signed-in-layout.tsx';
+
+/** A page in a file of its own, fetched when it is first opened. */
+const page = (load: () => Promise<{ default: ComponentType }>) => {
+  const Page = lazy(load);
+  return <Page />;
+};
+
+/** Pages for which somebody must be signed in, inside the shell. */
+const shellPages: readonly [address: { pattern: string }, element: React.ReactNode][] = [
+  [paths.live, page(() => import('./routes/live-page.tsx'))],
+  [paths.liveSite, page(() => import('./routes/live-site-page.tsx'))],
+  [paths.probe, page(() => import('./routes/probe-page.tsx'))],
+  [paths.account, page(() => import('./routes/account-page.tsx'))],
+];
+
+/** Pages without the shell. */
+const barePages: typeof shellPages = [
+  [paths.signIn, page(() => import('./routes/sign-in-page.tsx'))],
+  [paths.setPassword, page(() => import('./routes/set-password-page.tsx'))],
+  [paths.welcome, page(() => import('./routes/welcome-page.tsx'))],
+  [paths.liveWall, page(() => import('./routes/live-wall-page.tsx'))],
+];
+
+export function AppRoutes() {
+  return (
+    <Suspense fallback={<div className="min-h-dvh" role="status" aria-label="Opening the page" />}>
+      <Routes>
+        {barePages.map(([address, element]) => (
+          <Route key={address.pattern} path={address.pattern} element={element} />
+        ))}
+        <Route element={<SignedInLayout />}>
+          <Route index element={<Navigate replace to={paths.live.to()} />} />
+          {shellPages.map(([address, element]) => (
+            <Route key={address.pattern} path={address.pattern} element={element} />
+          ))}
+          <Route path="*" element={<UnknownAddress home={paths.live.to()} />} />
+        </Route>
+      </Routes>
+    </Suspense>
+  );
+}
