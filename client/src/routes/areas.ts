@@ -17,7 +17,9 @@ export function areasFor(session: Session, siteId: number | null): RailArea[] {
       under: [paths.probes.pattern, paths.points.pattern],
     },
     { label: 'Reference solutions', to: paths.standards.to() },
-    ...(session.can.readAudit ? [{ label: 'Records', to: paths.auditTrail.to(), under: [paths.records.pattern] }] : []),
+    ...(session.can.readAudit
+      ? [{ label: 'Records', to: paths.auditTrail.to(), under: [paths.records.pattern] }]
+      : []),
     { label: 'Settings', to: paths.settings.to() },
   ];
 }
@@ -41,7 +43,8 @@ export function siteItems(
   const everywhere: MenuItem[] =
     sites.length === 1 ? [] : [{ label: 'All sites', to: to(null), isCurrent: siteId === null }];
   return {
-    current: sites.find((site) => site.id === siteId)?.name ?? (sites.length === 1 ? sites[0]!.name : 'All sites'),
+    current:
+      sites.find((site) => site.id === siteId)?.name ?? (sites.length === 1 ? sites[0]!.name : 'All sites'),
     items: [
       ...everywhere,
       ...sites.map((site) => ({ label: site.name, to: to(site.id), isCurrent: site.id === siteId })),

@@ -32,7 +32,8 @@ function Shell() {
   const sites = useQuery(sitesList()).data?.items ?? [];
   const signOut = useSignOut();
   const navigate = useNavigate();
-  const leave = () => signOut.mutate({ isEverywhere: false }, { onSuccess: () => navigate(paths.signIn.to()) });
+  const leave = () =>
+    signOut.mutate({ isEverywhere: false }, { onSuccess: () => navigate(paths.signIn.to()) });
   return (
     <AppShell
       home={paths.live.to()}

@@ -8,7 +8,8 @@ import { paths } from '../paths.ts';
 /** The first visit to an empty Saltmark: somebody becomes its administrator, once. */
 export default function WelcomePage() {
   const welcome = useQuery(welcomeDetail());
-  if (welcome.data && !welcome.data.needsFirstAdministrator) return <Navigate replace to={paths.signIn.to()} />;
+  if (welcome.data && !welcome.data.needsFirstAdministrator)
+    return <Navigate replace to={paths.signIn.to()} />;
   return (
     <Threshold title="Welcome">
       <FirstAdministratorForm />

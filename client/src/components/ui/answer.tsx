@@ -25,10 +25,6 @@ export function Answer<Data>({ query, what, loading, missing, children }: Answer
     return missing ?? <EmptyFace title={query.error.message} />;
   }
   return (
-    <FailedFace
-      title={`Could not fetch ${what}.`}
-      error={query.error}
-      onRetry={() => query.refetch()}
-    />
+    <FailedFace title={`Could not fetch ${what}.`} error={query.error} onRetry={() => query.refetch()} />
   );
 }

@@ -20,11 +20,7 @@ export function RequireSession({ children }: { children: ReactNode }) {
   if (query.isPending) return <div className="min-h-dvh" role="status" aria-label="Opening Saltmark" />;
   return (
     <main className="page">
-      <FailedFace
-        title="Saltmark does not answer."
-        error={query.error}
-        onRetry={() => query.refetch()}
-      />
+      <FailedFace title="Saltmark does not answer." error={query.error} onRetry={() => query.refetch()} />
     </main>
   );
 }
@@ -32,8 +28,5 @@ export function RequireSession({ children }: { children: ReactNode }) {
 /** One socket for one person: another person gets another, with that person's rights. */
 function useLiveUpdates(userId: number | null): void {
   const queryClient = useQueryClient();
-  useEffect(
-    () => (userId === null ? undefined : startLiveUpdates(queryClient)),
-    [userId, queryClient],
-  );
+  useEffect(() => (userId === null ? undefined : startLiveUpdates(queryClient)), [userId, queryClient]);
 }
