@@ -43,6 +43,20 @@ const coefficientGiven = {
   },
 };
 
+/** Natural-water and ultrapure state the value at 25 °C only; a straight line holds near its reference. */
+const referenceFits = {
+  check: (point: { compensationModel?: string; referenceTemperatureC?: number }) => {
+    const { compensationModel: model, referenceTemperatureC: reference } = point;
+    if (model === undefined || reference === undefined) return true;
+    if (model === 'natural-water' || model === 'ultrapure') return reference === 25;
+    return model !== 'linear' || reference <= 50;
+  },
+  says: {
+    path: ['referenceTemperatureC'],
+    message: 'Natural water and ultrapure need 25 °C; linear compensation at most 50 °C.',
+  },
+};
+
 export const point = requirements.extend({
   id,
   code: z.string(),
@@ -75,12 +89,14 @@ const code = z
 /** The requirements as a whole, as they stand after a change. */
 export const pointRequirements = requirements
   .refine(limitsInOrder.check, limitsInOrder.says)
-  .refine(coefficientGiven.check, coefficientGiven.says);
+  .refine(coefficientGiven.check, coefficientGiven.says)
+  .refine(referenceFits.check, referenceFits.says);
 
 export const createPoint = requirements
   .extend({ areaId: id, code })
   .refine(limitsInOrder.check, limitsInOrder.says)
-  .refine(coefficientGiven.check, coefficientGiven.says);
+  .refine(coefficientGiven.check, coefficientGiven.says)
+  .refine(referenceFits.check, referenceFits.says);
 export type CreatePoint = z.infer<typeof createPoint>;
 
 export const changePoint = requirements

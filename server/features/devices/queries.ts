@@ -38,7 +38,7 @@ export function selectDevices(
   parts: Pick<Parts, 'sequelize'>,
   filter: DeviceFilter,
   after: CursorKey | null,
-  limit: number,
+  limit: number | null,
 ): Promise<DeviceRow[]> {
   return parts.sequelize.query<DeviceRow>(
     `select d.id, d.probe_id as "probeId", p.site_id as "siteId", d.name, d.is_online as "isOnline",

@@ -48,13 +48,16 @@ export async function listDevices(
   return { items: rows, total, nextCursor };
 }
 
+const oneDevice = { siteIds: null, deviceId: null, probeId: null, pattern: null };
+
+/** The device that speaks for a probe now; null when none has working credentials. */
+export async function activeDeviceOf(parts: Parts, probeId: number): Promise<DeviceRow | null> {
+  const rows = await selectDevices(parts, { ...oneDevice, probeId }, null, null);
+  return rows.find((row) => row.revokedAt === null) ?? null;
+}
+
 async function readDevice(parts: Parts, id: number): Promise<DeviceRow> {
-  const [row] = await selectDevices(
-    parts,
-    { siteIds: null, deviceId: id, probeId: null, pattern: null },
-    null,
-    1,
-  );
+  const [row] = await selectDevices(parts, { ...oneDevice, deviceId: id }, null, 1);
   if (!row) throw new AppError('devices.not-found');
   return row;
 }

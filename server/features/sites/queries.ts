@@ -37,7 +37,7 @@ export function selectSites(
   parts: Pick<Parts, 'sequelize'>,
   filter: SiteFilter,
   after: CursorKey | null,
-  limit: number,
+  limit: number | null,
 ): Promise<SiteRow[]> {
   return parts.sequelize.query<SiteRow>(
     `select s.id, s.code, s.name, s.time_zone as "timeZone", s.version, lower(s.name) as "sortName",

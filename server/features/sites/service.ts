@@ -39,6 +39,14 @@ export async function readSite(parts: Parts, actor: Actor, id: number): Promise<
   return row;
 }
 
+export type BoardSite = Pick<SiteRow, 'id' | 'code' | 'name' | 'timeZone'>;
+
+/** The sites of a live board, by name; null = every site. */
+export async function sitesForBoard(parts: Parts, siteIds: number[] | null): Promise<BoardSite[]> {
+  const rows = await selectSites(parts, { siteIds, pattern: null }, null, null);
+  return rows.map(({ id, code, name, timeZone }) => ({ id, code, name, timeZone }));
+}
+
 async function lockSite(
   transaction: OpenTransaction,
   actor: Actor,
