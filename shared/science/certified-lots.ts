@@ -4,20 +4,14 @@
  * A lot's own table is read between its rows and never beyond them. A certified value of aqueous KCl without a table follows the
  * temperature SHAPE of its KCl basis. Any other liquid has one temperature only.
  */
-import { cubicSpline, evaluateSpline } from './cubic-spline.ts';
-import {
-  InconsistentInputError,
-  InvalidInputError,
-  OutOfDomainError,
-  requireFinite,
-  requirePositive,
-} from './errors.ts';
-import { diluteKclTemperatureRatio, kclConcentrationAt25 } from './kcl-solutions.ts';
+import { InconsistentInputError, InvalidInputError, requireFinite, requirePositive } from './errors.ts';
 import { kclStandardConductivity, kclStandardLabel } from './kcl-standards.ts';
 import type { KclBasis, KclNominal } from './kcl-standards.ts';
+import { anyKclShape, fixedPoint, standardShape, tableShape } from './lot-temperature-shapes.ts';
+import type { LotInterpolation, LotTemperatureRow, TemperatureShape } from './lot-temperature-shapes.ts';
 import { citation, constant } from './references.ts';
 
-export type LotTemperatureRow = { temperatureC: number; conductivityUsCm: number };
+export type { LotInterpolation, LotTemperatureRow } from './lot-temperature-shapes.ts';
 
 export type CertifiedLot = {
   medium: 'kcl-aqueous' | 'other';
@@ -33,14 +27,6 @@ export type CertifiedLot = {
   temperatureTable: readonly LotTemperatureRow[] | null;
 };
 
-export type LotInterpolation =
-  | 'certificate-table'
-  | 'certificate-value-only'
-  | 'kcl-standard-table'
-  | 'kcl-standard-shape'
-  | 'kcl-dilute-shape'
-  | 'kcl-between-standards-shape';
-
 export type LotReference = {
   conductivityUsCm: number;
   /** Of the value and of the reading between known temperatures, together. */
@@ -53,183 +39,20 @@ export type LotReference = {
   slopeUsCmPerK: number;
 };
 
-type Shape = { value: number; slope: number; relativeHalfWidth: number; interpolation: LotInterpolation };
-
 const DEFAULT_COVERAGE_FACTOR = constant(2, '', 'gum-2008').value;
 /** Bottles whose label states no uncertainty are sold to 1 %: half-width of a rectangular distribution. */
 const UNSTATED_RELATIVE_HALF_WIDTH = constant(0.01, 'relative', 'bench-practice').value;
 
-/** Curvature of any electrolyte's conductivity against temperature: twice that of KCl. */
-const CURVATURE_BOUND = constant(1e-4, 'relative per K²', 'pratt-2001').value;
-/** Part of the distance between curve and straight line that a spline through three or more rows may still be wrong by. */
-const SPLINE_ERROR_SHARE = constant(0.2, '', 'pratt-2001').value;
-
-/** How far the molal and demal shapes part, per K; the scaled limiting law and the blend between standards are twice as far off. */
-const STANDARD_SHAPE_PER_K = constant(2e-5, 'relative per K', 'oiml-r56').value;
-const MODEL_SHAPE_PER_K = constant(5e-5, 'relative per K', 'pratt-2001').value;
-
-/** An unknown liquid without a table is known at one temperature; this near to it, 2.5 %/K bounds the change not corrected for. */
-const FIXED_POINT_WITHIN_K = constant(0.2, 'K', 'bench-practice').value;
-const UNKNOWN_LIQUID_PER_K = constant(0.025, 'relative per K', 'bench-practice').value;
-const UNKNOWN_LIQUID_SLOPE_PER_K = constant(0.02, 'relative per K', 'bench-practice').value;
-
 /** A certificate whose table and value differ by more was copied wrongly. */
 const LARGEST_CONTRADICTION = constant(5e-3, 'relative', 'bench-practice').value;
+
+/** Distances at which a label's basis is doubted, and another one recognised. */
+const BASIS_DOUBTED_FROM = constant(2e-3, 'relative', 'bench-practice').value;
+const BASIS_RECOGNISED_WITHIN = constant(1e-3, 'relative', 'bench-practice').value;
 
 function standardOf(lot: CertifiedLot): { basis: KclBasis; nominal: KclNominal } | null {
   if (lot.medium !== 'kcl-aqueous' || lot.basis === 'other' || lot.nominal === null) return null;
   return { basis: lot.basis, nominal: lot.nominal };
-}
-
-/** The certificate's own table, between its rows. */
-function tableShape(table: readonly LotTemperatureRow[], temperatureC: number): Shape {
-  const x = table.map((row) => row.temperatureC);
-  const y = table.map((row) =>
-    requirePositive('conductivity in the certificate table', row.conductivityUsCm, 'µS/cm'),
-  );
-  const spline = cubicSpline(x, y);
-  const lower = x[0] as number;
-  const upper = x[x.length - 1] as number;
-  if (!(temperatureC >= lower && temperatureC <= upper)) {
-    throw new OutOfDomainError({
-      quantity: 'temperature of the solution',
-      value: temperatureC,
-      unit: '°C',
-      lower,
-      upper,
-      advice: "The lot's certificate has no value there: bring the solution to a temperature of its table.",
-    });
-  }
-  const { value, slope } = evaluateSpline(spline, temperatureC);
-  return {
-    value,
-    slope,
-    relativeHalfWidth: tableErrorBound(x, y, temperatureC, value),
-    interpolation: 'certificate-table',
-  };
-}
-
-function tableErrorBound(
-  x: readonly number[],
-  y: readonly number[],
-  temperatureC: number,
-  value: number,
-): number {
-  let i = 0;
-  while (i < x.length - 2 && temperatureC >= (x[i + 1] as number)) i += 1;
-  const [x0, x1, y0, y1] = [x[i], x[i + 1], y[i], y[i + 1]] as [number, number, number, number];
-  if (x.length === 2) return (CURVATURE_BOUND * (temperatureC - x0) * (x1 - temperatureC)) / 2;
-  const straight = y0 + ((y1 - y0) * (temperatureC - x0)) / (x1 - x0);
-  return (SPLINE_ERROR_SHARE * Math.abs(value - straight)) / value;
-}
-
-/** Conductivity of the lot's KCl standard; the certified value only scales it. */
-function standardShape(
-  { basis, nominal }: { basis: KclBasis; nominal: KclNominal },
-  t: number,
-  referenceC: number,
-): Shape {
-  const { conductivityUsCm, slopeUsCmPerK, interpolationRelativeHalfWidth } = kclStandardConductivity({
-    basis,
-    nominal,
-    temperatureC: t,
-  });
-  const relativeHalfWidth =
-    t === referenceC ? 0 : interpolationRelativeHalfWidth + STANDARD_SHAPE_PER_K * Math.abs(t - referenceC);
-  return {
-    value: conductivityUsCm,
-    slope: slopeUsCmPerK,
-    relativeHalfWidth,
-    interpolation: 'kcl-standard-shape',
-  };
-}
-
-const MOLAL_NOMINALS = [0.01, 0.1, 1] as const;
-const MOLAL_AT_25 = MOLAL_NOMINALS.map(
-  (nominal) => kclStandardConductivity({ basis: 'molal', nominal, temperatureC: 25 }).conductivityUsCm,
-) as [number, number, number];
-
-function molalRatio(nominal: KclNominal, temperatureC: number): { ratio: number; ratioPerK: number } {
-  const { conductivityUsCm, slopeUsCmPerK } = kclStandardConductivity({
-    basis: 'molal',
-    nominal,
-    temperatureC,
-  });
-  const at25 = MOLAL_AT_25[MOLAL_NOMINALS.indexOf(nominal)] as number;
-  return { ratio: conductivityUsCm / at25, ratioPerK: slopeUsCmPerK / at25 };
-}
-
-/** kappa(t)/kappa(25) of aqueous KCl of any strength to 1 mol/kg: the scaled limiting law when dilute, a blend of columns above. */
-function kclRatio(
-  at25UsCm: number,
-  temperatureC: number,
-): { ratio: number; ratioPerK: number; isDilute: boolean } {
-  const [weak, middle, strong] = MOLAL_AT_25;
-  if (at25UsCm <= weak) {
-    const concentrationMolL = kclConcentrationAt25(at25UsCm);
-    return { ...diluteKclTemperatureRatio({ concentrationMolL, temperatureC }), isDilute: true };
-  }
-  if (at25UsCm > strong) {
-    throw new OutOfDomainError({
-      quantity: 'conductivity at 25 °C of aqueous KCl without a temperature table',
-      value: at25UsCm,
-      unit: 'µS/cm',
-      lower: 0,
-      upper: strong,
-      advice: "Enter the temperature table of the lot's certificate.",
-    });
-  }
-  const [lower, upper, from, to] =
-    at25UsCm <= middle ? ([0.01, 0.1, weak, middle] as const) : ([0.1, 1, middle, strong] as const);
-  const share = Math.log(at25UsCm / from) / Math.log(to / from);
-  const a = molalRatio(lower, temperatureC);
-  const b = molalRatio(upper, temperatureC);
-  return {
-    ratio: a.ratio + share * (b.ratio - a.ratio),
-    ratioPerK: a.ratioPerK + share * (b.ratioPerK - a.ratioPerK),
-    isDilute: false,
-  };
-}
-
-/** The conductivity at 25 °C of a KCl lot certified at another temperature; the ratio hardly depends on it, so few turns do. */
-function certifiedAt25(certifiedUsCm: number, referenceC: number): number {
-  if (referenceC === 25) return certifiedUsCm;
-  const TURNS = 3;
-  let at25 = certifiedUsCm / molalRatio(0.01, referenceC).ratio;
-  for (let turn = 0; turn < TURNS; turn += 1) at25 = certifiedUsCm / kclRatio(at25, referenceC).ratio;
-  return at25;
-}
-
-function anyKclShape(certifiedUsCm: number, temperatureC: number, referenceC: number): Shape {
-  const at25 = certifiedAt25(certifiedUsCm, referenceC);
-  const { ratio, ratioPerK, isDilute } = kclRatio(at25, temperatureC);
-  return {
-    value: at25 * ratio,
-    slope: at25 * ratioPerK,
-    relativeHalfWidth: MODEL_SHAPE_PER_K * Math.abs(temperatureC - referenceC),
-    interpolation: isDilute ? 'kcl-dilute-shape' : 'kcl-between-standards-shape',
-  };
-}
-
-function fixedPoint(certifiedUsCm: number, temperatureC: number, referenceC: number): Shape {
-  const apart = Math.abs(temperatureC - referenceC);
-  if (!(apart <= FIXED_POINT_WITHIN_K)) {
-    throw new OutOfDomainError({
-      quantity: 'temperature of the solution',
-      value: temperatureC,
-      unit: '°C',
-      lower: referenceC - FIXED_POINT_WITHIN_K,
-      upper: referenceC + FIXED_POINT_WITHIN_K,
-      advice:
-        "This liquid is not aqueous KCl and its certificate has no temperature table: bring it to the certificate's temperature.",
-    });
-  }
-  return {
-    value: certifiedUsCm,
-    slope: UNKNOWN_LIQUID_SLOPE_PER_K * certifiedUsCm,
-    relativeHalfWidth: UNKNOWN_LIQUID_PER_K * apart,
-    interpolation: 'certificate-value-only',
-  };
 }
 
 /** Relative standard uncertainty of the certified value. */
@@ -241,7 +64,7 @@ function certifiedUncertainty(lot: CertifiedLot, valueUsCm: number): number {
 }
 
 function assemble(
-  shape: Shape,
+  shape: TemperatureShape,
   value: number,
   slope: number,
   relativeU: number,
@@ -325,8 +148,8 @@ function byStandard(lot: CertifiedLot, temperatureC: number): LotReference {
   }
   const at = kclStandardConductivity({ ...standard, temperatureC });
   const own =
-    lot.expandedUncertaintyUsCm === null ? 0 : certifiedUncertainty(lot, at25OrReference(standard, lot));
-  const shape: Shape = {
+    lot.expandedUncertaintyUsCm === null ? 0 : certifiedUncertainty(lot, standardAtReference(standard, lot));
+  const shape: TemperatureShape = {
     value: at.conductivityUsCm,
     slope: at.slopeUsCmPerK,
     relativeHalfWidth: at.interpolationRelativeHalfWidth,
@@ -336,7 +159,7 @@ function byStandard(lot: CertifiedLot, temperatureC: number): LotReference {
   return assemble(shape, shape.value, shape.slope, relativeU, citation(at.source));
 }
 
-const at25OrReference = (standard: { basis: KclBasis; nominal: KclNominal }, lot: CertifiedLot): number =>
+const standardAtReference = (standard: { basis: KclBasis; nominal: KclNominal }, lot: CertifiedLot): number =>
   kclStandardConductivity({ ...standard, temperatureC: lot.referenceTemperatureC }).conductivityUsCm;
 
 /**
@@ -416,6 +239,3 @@ export function suspectedBasis({ lot }: { lot: CertifiedLot }): KclBasis | null 
     (['molal', 'demal', 'molar'] as const).find((basis) => distance(basis) <= BASIS_RECOGNISED_WITHIN) ?? null
   );
 }
-
-const BASIS_DOUBTED_FROM = constant(2e-3, 'relative', 'bench-practice').value;
-const BASIS_RECOGNISED_WITHIN = constant(1e-3, 'relative', 'bench-practice').value;
