@@ -73,7 +73,7 @@ const skerryPoint: Water[] = [
   {
     key: 'permeate-a',
     site: 'skerry-point',
-    conductivity25UsCm: 292,
+    conductivity25UsCm: 306,
     seasonalShare: 0.09,
     dailyShare: 0.01,
     ...lively,
@@ -93,7 +93,7 @@ const skerryPoint: Water[] = [
   {
     key: 'permeate-c',
     site: 'skerry-point',
-    conductivity25UsCm: 281,
+    conductivity25UsCm: 297,
     seasonalShare: 0.09,
     dailyShare: 0.01,
     ...lively,
