@@ -1,9 +1,17 @@
 /** Where a private cluster's files live, and as which user its server runs. */
-import { createHash } from 'node:crypto';
+import { randomBytes } from 'node:crypto';
 import { execFileSync } from 'node:child_process';
-import { chownSync, existsSync, mkdirSync, readFileSync, statSync, writeFileSync } from 'node:fs';
+import {
+  chownSync,
+  existsSync,
+  mkdirSync,
+  readdirSync,
+  readFileSync,
+  statSync,
+  writeFileSync,
+} from 'node:fs';
 import { basename, join } from 'node:path';
-import { Refusal } from './say.mjs';
+import { Refusal, say } from './say.mjs';
 
 const ROOT_FOLDER = '/var/lib/saltmark';
 
@@ -34,6 +42,33 @@ function canReach(folder, { uid, gid }) {
   }
 }
 
+const readLine = (file) => (existsSync(file) ? readFileSync(file, 'utf8').trim() : '');
+
+/** Folders under /var/lib/saltmark that an earlier clone at the same place has left. */
+function earlierFolders(dir, current) {
+  const names = existsSync(ROOT_FOLDER) ? readdirSync(ROOT_FOLDER) : [];
+  return names
+    .map((name) => join(ROOT_FOLDER, name))
+    .filter((folder) => folder !== current && readLine(join(folder, 'made-for')) === dir);
+}
+
+/** A folder that user postgres can reach; `moved-to` in `dir` remembers it, so a fresh clone gets a fresh one. */
+function folderElsewhere(dir) {
+  const pointer = join(dir, 'moved-to');
+  const known = readLine(pointer);
+  if (known && existsSync(known)) return known;
+  const folder = join(ROOT_FOLDER, `${basename(dir)}-${randomBytes(6).toString('hex')}`);
+  mkdirSync(folder, { recursive: true });
+  writeFileSync(join(folder, 'made-for'), `${dir}\n`);
+  writeFileSync(pointer, `${folder}\n`);
+  for (const earlier of earlierFolders(dir, folder)) {
+    say(
+      `  An earlier clone at this place has left its database in ${earlier}; remove it if nobody needs it.`,
+    );
+  }
+  return folder;
+}
+
 /**
  * Answers `{ folder, pgdata, account }`; `account` is empty for an ordinary user.
  * As root the server runs as `postgres`; where that user cannot reach `dir`, the files live under /var/lib/saltmark.
@@ -43,14 +78,7 @@ export function clusterFolder(dir) {
   if (!isRoot()) return { folder: dir, pgdata: join(dir, 'data'), account: {} };
 
   const account = postgresAccount();
-  let folder = dir;
-  if (!canReach(dir, account)) {
-    const mark = createHash('sha256').update(dir).digest('hex').slice(0, 12);
-    folder = join(ROOT_FOLDER, `${basename(dir)}-${mark}`);
-    mkdirSync(folder, { recursive: true });
-    writeFileSync(join(folder, 'made-for'), `${dir}\n`);
-    writeFileSync(join(dir, 'moved-to'), `${folder}\n`);
-  }
+  const folder = canReach(dir, account) ? dir : folderElsewhere(dir);
   const pgdata = join(folder, 'data');
   // Data made earlier by an ordinary user stays that user's: the server insists on owning its files.
   const owner = existsSync(pgdata) ? statSync(pgdata) : undefined;

@@ -6,6 +6,7 @@ import { makeDataFolder } from './paths.mjs';
 export async function ensurePackages({ debian = [], onStart } = {}) {
   requireNode();
   makeDataFolder();
-  await ensureNpmPackages({ onStart });
+  // The quick ones first: whoever may not install them is told before a long download.
   await ensureDebianPackages(debian, { onStart });
+  await ensureNpmPackages({ onStart });
 }
