@@ -1,5 +1,6 @@
 /** The npm packages: installed exactly as package-lock.json says, when anything differs. */
-import { existsSync, readFileSync, rmSync } from 'node:fs';
+import { createHash } from 'node:crypto';
+import { existsSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { dirname, join } from 'node:path';
 import { findOnPath, lastLines, run } from './commands.mjs';
 import { requireFreeSpace } from './disk-space.mjs';
@@ -32,13 +33,28 @@ function readLock(file) {
 export function areInstalled(wanted, installed) {
   if (!wanted || !installed) return false;
   return Object.entries(wanted).every(
-    ([path, { version, optional, peer, devOptional }]) =>
+    ([path, { version, optional, extraneous, peer, devOptional }]) =>
       path === '' ||
       optional ||
       devOptional ||
       (peer && !installed[path]) ||
       installed[path]?.version === version,
   );
+}
+
+/** After our own install: the lock it was made from. The packages come and go with the folder, and so does this. */
+const stampFile = (folder) => join(folder, 'node_modules/.saltmark-lock');
+const lockHash = (folder) =>
+  createHash('sha256')
+    .update(readFileSync(join(folder, 'package-lock.json')))
+    .digest('hex');
+
+function isUpToDate(folder) {
+  const installed = readLock(join(folder, 'node_modules/.package-lock.json'));
+  if (!installed) return false;
+  const stamp = stampFile(folder);
+  if (existsSync(stamp) && readFileSync(stamp, 'utf8') === lockHash(folder)) return true;
+  return areInstalled(readLock(join(folder, 'package-lock.json')), installed);
 }
 
 /** npm beside this Node, so that a shell without it on the PATH works too. */
@@ -48,8 +64,7 @@ const npm = () => {
 };
 
 export async function ensureNpmPackages({ folder = root, onStart } = {}) {
-  const wanted = readLock(join(folder, 'package-lock.json'));
-  if (areInstalled(wanted, readLock(join(folder, 'node_modules/.package-lock.json')))) return;
+  if (isUpToDate(folder)) return;
 
   const program = npm();
   if (!program)
@@ -67,7 +82,10 @@ export async function ensureNpmPackages({ folder = root, onStart } = {}) {
       env: { ...process.env, PATH: `${dirname(process.execPath)}:${process.env.PATH}` },
     }),
   );
-  if (code === 0) return;
+  if (code === 0) {
+    writeFileSync(stampFile(folder), lockHash(folder));
+    return;
+  }
   throw new Refusal(
     'The npm packages could not be installed.',
     `See ${log}; check the network connection and start again.`,
