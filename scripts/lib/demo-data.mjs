@@ -1,7 +1,9 @@
 /** The demo: loaded once, into a database that is new. What happened is remembered beside the database's files. */
+import { rmSync } from 'node:fs';
 import { createDatabase, dropDatabase, withClient } from './databases.mjs';
 import { database } from './cluster-setup.mjs';
 import { typescript } from './commands.mjs';
+import { simulatorFile, simulatorStateFile } from './paths.mjs';
 import { step } from './say.mjs';
 
 /** `loaded` · `loading` (interrupted) · `none` (the owner chose an empty one) · undefined (a new database). */
@@ -11,6 +13,8 @@ export async function recreateDatabase(cluster) {
   const asMaintenance = { ...cluster, superuserUrl: cluster.maintenanceUrl };
   await dropDatabase(asMaintenance, database);
   await createDatabase(asMaintenance, database);
+  // The simulated probes of before must not go on counting into a database that never saw them.
+  for (const file of [simulatorFile, simulatorStateFile]) rmSync(file, { force: true });
 }
 
 export const loadDemo = (supervisor, env) =>

@@ -10,6 +10,7 @@ export const logsFolder = join(dataFolder, 'logs');
 export const postgresFolder = join(dataFolder, 'postgres');
 export const runLockFile = join(dataFolder, 'running.json');
 export const simulatorFile = join(dataFolder, 'simulator.json');
+export const simulatorStateFile = join(dataFolder, 'simulator-state.json');
 
 export function makeDataFolder() {
   try {

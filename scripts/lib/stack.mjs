@@ -44,7 +44,7 @@ export function startSimulator(supervisor, settings, { hasDemo }) {
   supervisor.start({
     name: 'simulator',
     title: 'The simulator',
-    args: typescript('simulator/main.ts', '--credentials', simulatorFile, '--broker', broker),
+    args: typescript('simulator/main.ts', '--credentials', simulatorFile, '--url', broker),
     env: process.env,
     order: stopOrder.beside,
   });
