@@ -97,7 +97,7 @@ export function cellConstantGeometry(input: CellConstantInput, width: number): C
     height,
     plot,
     channels,
-    constantLine: constantLine(input.constants, to, x, y),
+    constantLine: constantLine(input.constants, channelEnd(input, to), x, y),
     steps: stepsOf(input.constants, x, y),
     bands: bandsOf(input.forecast ?? [], x, y),
     forecastLine: forecastLine(input.forecast ?? [], x, y),
@@ -110,7 +110,8 @@ export function cellConstantGeometry(input: CellConstantInput, width: number): C
       x: x(tick.t),
     })),
     values: axis.ticks.map((value) => ({ value, y: y(value) })),
-    decimals: axis.decimals,
+    // Three at least: a cell constant is never set with fewer.
+    decimals: Math.max(3, axis.decimals),
     limits: last
       ? { top: last.top, middle: y(input.constants.at(-1)?.cellConstantPerCm ?? 0), bottom: last.bottom }
       : null,
@@ -155,8 +156,7 @@ function channelsOf(
 ): CellConstantGeometry['channels'] {
   const T = input.tolerancePercent / 100;
   const w = Math.min(input.guardBandPercent / 100, T);
-  // The channel ends at the due date: beyond it nothing is promised.
-  const end = input.due != null && input.due > input.now ? input.due : to;
+  const end = channelEnd(input, to);
   return input.constants.map((constant, i) => {
     const k = constant.cellConstantPerCm;
     const [left, right] = [x(constant.from), x(input.constants[i + 1]?.from ?? end)];
@@ -173,11 +173,16 @@ function channelsOf(
   });
 }
 
-function constantLine(constants: readonly ConstantInUse[], to: number, x: Scale, y: Scale): string {
+/** The channel ends at the due date: beyond it nothing is promised. */
+function channelEnd(input: CellConstantInput, to: number): number {
+  return input.due != null && input.due > input.now ? input.due : to;
+}
+
+function constantLine(constants: readonly ConstantInUse[], end: number, x: Scale, y: Scale): string {
   const [first, ...later] = constants;
   if (!first) return '';
   const path = later.map((c) => `H${px(x(c.from))}V${px(y(c.cellConstantPerCm))}`).join('');
-  return `M${px(x(first.from))} ${px(y(first.cellConstantPerCm))}${path}H${px(x(to))}`;
+  return `M${px(x(first.from))} ${px(y(first.cellConstantPerCm))}${path}H${px(x(end))}`;
 }
 
 function stepsOf(constants: readonly ConstantInUse[], x: Scale, y: Scale): CellConstantGeometry['steps'] {

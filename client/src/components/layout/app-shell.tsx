@@ -99,7 +99,8 @@ function AreaLinks({ areas, pathname }: { areas: readonly RailArea[]; pathname: 
 
 /** The area whose address begins the present one; the longest wins. */
 export function currentArea(areas: readonly RailArea[], pathname: string): RailArea | undefined {
-  const isUnder = (start: string) => pathname === start || pathname.startsWith(start.replace(/\/$/, '') + '/');
+  const isUnder = (start: string) =>
+    pathname === start || pathname.startsWith(start.replace(/\/$/, '') + '/');
   return areas
     .filter((area) => (area.under ?? [area.to]).some(isUnder))
     .sort((a, b) => b.to.length - a.to.length)[0];

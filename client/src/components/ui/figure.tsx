@@ -40,7 +40,7 @@ export interface QuantityProps {
 
 /** Value, ± U and unit, each at its fixed place. */
 export function Quantity(props: QuantityProps) {
-  const { quantity, state = 'plain', isStacked = false, isLive = false, whole = 6, fraction = 3 } = props;
+  const { quantity, state = 'plain', isStacked = false, isLive = false, whole = 5, fraction = 3 } = props;
   const ref = useChangeMark(quantity.value, isLive);
   const hasU = quantity.uncertainty !== null && state === 'plain';
   return (
@@ -81,12 +81,14 @@ export interface NameCellProps {
   name: ReactNode;
   /** Kind and tag, or whatever says which one. */
   note?: ReactNode;
+  /** For a second name in a row: who works there. */
+  isSmall?: boolean;
 }
 
 /** First cell of a ledger row: name in mono, kind and tag under it. */
-export function NameCell({ name, note }: NameCellProps) {
+export function NameCell({ name, note, isSmall = false }: NameCellProps) {
   return (
-    <span className="name-cell">
+    <span className={classNames('name-cell', isSmall && 'is-small')}>
       <b>{name}</b>
       {note ? <small>{note}</small> : null}
     </span>
