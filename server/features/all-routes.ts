@@ -1,6 +1,7 @@
 /** Every slice's table, in the order of the description. A new slice adds one line. */
 import type { AnyRoute } from '../http/route.ts';
 import { auditEventRoutes } from './audit-events/routes.ts';
+import { calculationRoutes } from './calculations/routes.ts';
 import { checkRoutes } from './checks/routes.ts';
 import { deviceRoutes } from './devices/routes.ts';
 import { mailRoutes } from './mails/routes.ts';
@@ -34,4 +35,5 @@ export const allRoutes: readonly AnyRoute[] = [
   ...settingRoutes,
   ...mailRoutes,
   ...searchRoutes,
+  ...calculationRoutes,
 ];
