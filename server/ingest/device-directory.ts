@@ -35,6 +35,8 @@ export interface DeviceDirectory {
   /** The device as last heard of; undefined when it must be looked up. */
   cached: (name: string) => Device | undefined;
   find: (name: string) => Promise<Device | null>;
+  /** Devices on record as online. */
+  onlineDevices: () => Device[];
   /** Reads one device again; call it after its credentials changed if the change must count in this very call. */
   refreshDevice: (name: string) => Promise<void>;
   /** Called with a device whose credentials no longer let it in, or have changed. */
@@ -119,6 +121,7 @@ export async function openDeviceDirectory(options: {
       }
       return row;
     },
+    onlineDevices: () => [...devices.values()].filter((device) => device.isOnline && !device.isRevoked),
     refreshDevice,
     onCredentialsChanged: (heard) => void listeners.push(heard),
     ensureFresh: async () => {

@@ -16,18 +16,20 @@ interface Heard<T> {
   said: T;
 }
 
+type SaidState = Pick<StateMessage, 'boot' | 'online' | 'why'>;
+
 export interface PresencePlan {
   /** The newest birth of each device. */
   births: Heard<BirthMessage>[];
   /** Every settings hash a birth explained. */
   explained: Heard<BirthMessage>[];
-  states: Heard<Pick<StateMessage, 'boot' | 'online' | 'why'>>[];
+  states: Heard<SaidState>[];
   events: (Heard<EventMessage> & { atMs: number })[];
 }
 
 export interface PresenceInput {
   births: Heard<BirthMessage>[];
-  states: Heard<StateMessage>[];
+  states: Heard<SaidState>[];
   events: PresencePlan['events'];
 }
 
@@ -51,7 +53,12 @@ export function planPresence({ births, states, events }: PresenceInput): Presenc
     .map(({ device, receivedAtMs, said }) => {
       return { device, receivedAtMs, said: { boot: said.boot, online: true, why: 'start' as const } };
     });
-  return { births: keptBirths, explained: births, states: newest([...started, ...states]), events };
+  return {
+    births: keptBirths,
+    explained: births,
+    states: newest<SaidState>([...started, ...states]),
+    events,
+  };
 }
 
 export const isEmptyPlan = (plan: PresencePlan): boolean =>

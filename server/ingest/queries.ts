@@ -226,3 +226,20 @@ export async function selectStoredReadings(
   );
   return rows;
 }
+
+/** How far the live view had come when this process started. */
+export async function selectLivePositions(
+  db: Db,
+): Promise<{ probeId: number; deviceId: number; boot: string; n: number; atMs: number }[]> {
+  const { rows } = await db.query<{
+    probeId: number;
+    deviceId: number;
+    boot: string;
+    n: number;
+    atMs: number;
+  }>(`
+    select probe_id as "probeId", device_id as "deviceId", boot, n::float8 as n,
+      (extract(epoch from at) * 1000)::float8 as "atMs"
+    from live_readings`);
+  return rows;
+}
