@@ -42,7 +42,7 @@ export async function ensureClientBuilt({ onStart } = {}) {
     run(process.execPath, [vite, 'build', 'client'], {
       log,
       onStart,
-      env: { ...process.env, NODE_ENV: 'production' },
+      env: { ...process.env, NODE_ENV: 'production', NO_COLOR: '1' },
     }),
   );
   if (code !== 0) {
