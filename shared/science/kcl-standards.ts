@@ -131,9 +131,9 @@ export type KclStandardConductivity = {
  * @param options.solventUsCm conductivity of the water used, at that temperature, added to the salt's; 0 unless given, µS/cm
  * @returns conductivity in µS/cm, its relative standard uncertainty, its source, slope in µS/cm per K and interpolation error
  * @throws OutOfDomainError outside 0 to 50 °C, InvalidInputError for an unknown basis or nominal
- * Accuracy (k = 1): molal 0.03 % (0.01) and 0.04 % (0.1, 1); demal 0.05 % to 25 °C, 0.1 % at 50 °C; molar 0.1 %. Interpolation 8 ppm
+ * Accuracy (k = 1): molal 0.03 % (0.01) and 0.04 % (0.1, 1); demal 0.05 % to 25 °C, 0.1 % at 50 °C; molar 0.1 %. Interpolation 9 ppm
  * (0.01, 0.1), 50 ppm (1).
- * Source: pratt-2001 (molal), oiml-r56 (demal), juhasz-marsh-1981, crc-equivalent-conductivity, chambers-1956 (molar).
+ * Source: pratt-2001 (molal), oiml-r56 (demal), juhasz-marsh-1981, crc-equivalent-conductivity, kohlrausch-holborn (molar).
  * @example kclStandardConductivity({ basis: 'molal', nominal: 0.01, temperatureC: 25 }).conductivityUsCm // 1408.23
  * @example kclStandardConductivity({ basis: 'demal', nominal: 0.01, temperatureC: 25 }).conductivityUsCm // ≈ 1408.3
  * @example kclStandardConductivity({ basis: 'molar', nominal: 0.01, temperatureC: 25 }).conductivityUsCm // ≈ 1412.57

@@ -67,7 +67,7 @@ export const MOLAL_RELATIVE_STANDARD_UNCERTAINTY = constant(
 
 /** Leave-one-out splines reproduce every inner row this closely (half-width); 1 mol/kg lacks its 18 °C row. */
 export const MOLAL_INTERPOLATION_HALF_WIDTH = constant(
-  { 0.01: 8e-6, 0.1: 8e-6, 1: 5e-5 },
+  { 0.01: 9e-6, 0.1: 9e-6, 1: 5e-5 },
   'relative',
   'pratt-2001',
 ).value;
@@ -152,13 +152,14 @@ export const JONES_BRADSHAW_INTERNATIONAL = constant(
 ).value;
 
 /**
- * Molar, mol/L at 25 °C, absolute ohm, by the 25 °C equations: labels of bottles say 1413, 12 880 or 12 890, and 111 800 or
- * 111 900. The older 12 880 and 111 800 are three-digit values 0.08 % and 0.09 % lower than these.
+ * Molar, mol/L at 25 °C, absolute ohm. Sources disagree: labels of bottles say 1413 (0.01; the equation 1412.57), 12 880 or 12 890
+ * (0.1; the older value is 0.08 % lower) and 111 800 or 111 900 (1). For 1 mol/L the lower one stands here because the only table
+ * with temperatures belongs to it; the uncertainty covers both.
  */
 export const MOLAR_AT_25 = {
   0.01: constant(1412.57, 'µS/cm', 'juhasz-marsh-1981'),
   0.1: constant(12890, 'µS/cm', 'crc-equivalent-conductivity'),
-  1: constant(111900, 'µS/cm', 'chambers-1956'),
+  1: constant(111800, 'µS/cm', 'kohlrausch-holborn'),
 } as const;
 
 /** A flask filled at 20 °C holds 0.12 % less per litre at 25 °C; labels rarely say which was meant. */
