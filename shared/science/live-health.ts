@@ -10,7 +10,7 @@ import {
   requirePositive,
   requireWithin,
 } from './errors.ts';
-import { meanOf, median, medianAbsoluteDeviation, noiseSd, welchT } from './robust-statistics.ts';
+import { meanOf, median, noiseSd, welchT } from './robust-statistics.ts';
 
 export interface HealthTest {
   isSuspect: boolean;
@@ -84,7 +84,7 @@ export function flatLine(options: {
  * @returns what the noise is, its standard deviation (same unit) and its ratio to the usual.
  * @throws OutOfDomainError outside those ranges.
  * Accuracy: that of noiseSd. Source: common practice.
- * @example noise({ values: [0, 9, 1, 8, 0, 9, 2, 9, 0, 8, 1, 9], usualSd: 1 }).ratio // ≈ 8.387
+ * @example noise({ values: [0, 9, 1, 8, 0, 9, 2, 9, 0, 8, 1, 9], usualSd: 1 }).ratio // ≈ 9.3817
  */
 export function noise(options: {
   values: readonly number[];
@@ -111,7 +111,7 @@ export function noise(options: {
 
 /**
  * Spike: single readings far from their neighbours in time.
- * |x_i - median(x_(i-2) ... x_(i+2))| > threshold max(MAD of these distances, resolution/2); the first and last two are not judged.
+ * |x_i - median(x_(i-2) ... x_(i+2))| > threshold max(median of these distances, resolution/2); the first and last two are not judged.
  * @param options.values window, any one unit, 10 or more to be assessed. options.resolution one step, 0 unless given.
  * @param options.threshold above 0; 6 unless given.
  * @returns indices (from 0) of the spikes.
@@ -132,7 +132,7 @@ export function spike(options: {
   const distances = values
     .slice(2, -2)
     .map((value, offset) => value - median(values.slice(offset, offset + 5)));
-  const scale = Math.max(medianAbsoluteDeviation(distances), resolution / 2);
+  const scale = Math.max(median(distances.map(Math.abs)), resolution / 2);
   const indices: number[] = [];
   distances.forEach((distance, offset) => {
     if (Math.abs(distance) > threshold * scale) indices.push(offset + 2);

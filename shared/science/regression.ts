@@ -191,7 +191,7 @@ export function predictLine(
  * @returns half-width, unit of y.
  * @throws OutOfDomainError outside those ranges.
  * Accuracy: 1e-12 relative. Source: nist-handbook 4.5.2.
- * @example predict(fitLine({ x: [1, 2, 3, 4], y: [2.1, 3.9, 6.2, 7.8] }), 5, 0.95) // ≈ 1.2909
+ * @example predict(fitLine({ x: [1, 2, 3, 4], y: [2.1, 3.9, 6.2, 7.8] }), 5, 0.95) // ≈ 1.37752
  */
 export function predict(fit: LineFit, x0: number, probability: number): number {
   return predictLine(fit, x0, probability).predictionHalfWidth;

@@ -9,7 +9,7 @@ import {
   isBelowPureWater,
   temperatureFault,
 } from '../../shared/science/physical-checks.ts';
-import { median, medianAbsoluteDeviation, noiseSd, welchT } from '../../shared/science/robust-statistics.ts';
+import { median, noiseSd, welchT } from '../../shared/science/robust-statistics.ts';
 
 /** Repeatable noise, roughly normal with standard deviation 1: sums of a small linear congruential generator. */
 function whiteNoise(count: number, start = 1): number[] {
@@ -72,6 +72,11 @@ describe('noise', () => {
     const values = around(1000, 1, 120);
     for (const index of [20, 60, 90]) values[index] = 1500;
     expect(noise({ values, usualSd: 1 }).reading).toBe('steady');
+  });
+
+  test('a signal that jumps to and fro is noisy, although its jumps are nearly all of one size', () => {
+    const values = Array.from({ length: 40 }, (_, index) => 1000 + (index % 2) * 9);
+    expect(noise({ values, usualSd: 1 }).reading).toBe('noisy');
   });
 
   test('noise lost in the resolution is no collapse', () => {
@@ -290,7 +295,10 @@ describe('what is physically possible', () => {
 });
 
 describe('robust statistics', () => {
-  const sample = fc.array(fc.double({ min: -1e3, max: 1e3, noNaN: true }), { minLength: 2, maxLength: 40 });
+  const sample = fc.array(
+    fc.integer({ min: -8000, max: 8000 }).map((n) => n / 8),
+    { minLength: 3, maxLength: 40 },
+  );
 
   test('half of the values lie at or below the median, half at or above', () => {
     fc.assert(
@@ -306,12 +314,12 @@ describe('robust statistics', () => {
     expect(median([100, 9, 10])).toBe(10);
   });
 
-  test('spread does not depend on the level, and scales with the unit', () => {
+  test('noise depends neither on the level nor on a steady slope, and scales with the unit', () => {
     fc.assert(
       fc.property(sample, (values) => {
-        const spread = medianAbsoluteDeviation(values);
-        expect(medianAbsoluteDeviation(values.map((value) => value + 500))).toBeCloseTo(spread, 9);
-        expect(medianAbsoluteDeviation(values.map((value) => value * 8))).toBe(spread * 8);
+        const sd = noiseSd(values);
+        expect(noiseSd(values.map((value, index) => value + 500 + 25 * index))).toBeCloseTo(sd, 9);
+        expect(noiseSd(values.map((value) => value * 8))).toBeCloseTo(sd * 8, 9);
       }),
     );
   });
