@@ -204,7 +204,7 @@ function announceRest(store: After, group: GatheredGroup, rows: AssembledRows, w
   }
   for (const { id, probeId } of written.notices) {
     const siteId = siteOf(directory, probeId, nowMs);
-    announcements.changedOften('notices', { slice: 'notices', id, kind: 'created' }, siteId);
+    announcements.changedOften(`notices/${siteId}`, { slice: 'notices', id, kind: 'created' }, siteId);
     announcements.changedOften(
       `probes/${probeId}`,
       { slice: 'probes', id: probeId, kind: 'changed' },
