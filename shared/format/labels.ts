@@ -194,7 +194,7 @@ export const CHECK_INVALID_LABELS: Words<CheckInvalidReason> = {
   'no-temperature': 'no usable temperature came with the reading',
   'no-conductivity': 'no usable conductivity came with the reading',
   'quality-not-good': 'the device itself did not call the reading good',
-  'outside-solution-range': 'the temperature is outside what the lot is certified for',
+  'outside-solution-range': 'the temperature is outside what the lot’s certificate covers',
 };
 
 export const CONTEXT_LABELS: Words<ReadingContext> = {

@@ -73,6 +73,8 @@ const BANDS = [
 /** As found and cleaned this close together belong to one visit, ms. */
 const VISIT_MS = 12 * 3_600_000;
 const DAY_MS = 86_400_000;
+/** Room for one time label, px. */
+const TIME_LABEL = 110;
 
 /** The strip unrolled in time: channel and posts follow the constant in use, hatching is the guard band. */
 export function cellConstantGeometry(input: CellConstantInput, width: number): CellConstantGeometry {
@@ -105,7 +107,7 @@ export function cellConstantGeometry(input: CellConstantInput, width: number): C
     joins: joinsOf(placed),
     nowX: x(input.now),
     dueX: input.due == null ? null : x(input.due),
-    times: timeTicks(from, to, Math.max(2, Math.floor(width / 130)), input.timeZone).map((tick) => ({
+    times: timeTicks(from, to, Math.max(2, Math.floor(width / TIME_LABEL)), input.timeZone).map((tick) => ({
       ...tick,
       x: x(tick.t),
     })),

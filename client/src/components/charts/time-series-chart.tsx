@@ -138,7 +138,9 @@ function SeriesCanvas(props: SeriesCanvasProps) {
       </div>
       <p className="chart-readout" aria-hidden="true">
         {cursor ? readout(cursor.datum, { unit, decimals, timeZone }) : null}
-        {!cursor && onRangeChange ? 'Drag over the chart to look closer.' : null}
+        {!cursor && onRangeChange ? (
+          <span className="chart-hint">Drag over the chart to look closer.</span>
+        ) : null}
       </p>
     </>
   );

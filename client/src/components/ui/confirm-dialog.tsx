@@ -86,7 +86,7 @@ function ConfirmBody(props: ConfirmDialogProps) {
         </Field>
       ) : null}
       {fault.whole ? (
-        <p className="field-error" role="alert">
+        <p className="field-error" role="status">
           {fault.whole}
         </p>
       ) : null}

@@ -67,7 +67,7 @@ export function FailedFace({ title, error, children, onRetry, actions }: FailedF
   const requestId = requestIdOf(error);
   const sentence = children ?? (error instanceof Error ? error.message : 'Try again in a moment.');
   return (
-    <div className="face face-failed" role="alert">
+    <div className="face face-failed" role="status">
       <p className="face-title">{title}</p>
       <p className="face-sentence">{sentence}</p>
       <div className="face-actions">

@@ -61,8 +61,8 @@ export function Quantity(props: QuantityProps) {
   );
 }
 
-/** Restarts the underline each time the text changes. */
-function useChangeMark(text: string, isLive: boolean) {
+/** Restarts the underline each time the text changes; put the ref on the element of the figure. */
+export function useChangeMark(text: string, isLive: boolean) {
   const ref = useRef<HTMLSpanElement>(null);
   const last = useRef(text);
   useEffect(() => {
