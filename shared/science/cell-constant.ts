@@ -15,7 +15,18 @@ const HIGHEST_PER_CM = constant(100, 'cm⁻¹', 'bench-practice').value;
 
 const SWAPPED = 'Check that it is stated per cm (not in cm, and not per m).';
 
-/** Refuses a cell constant that no cell of the trade has. */
+/**
+ * The same cell constant, once it is one that a cell of the trade can have.
+ *
+ * 0.001 <= K <= 100
+ *
+ * @param cellConstantPerCm cell constant, cm⁻¹
+ * @returns cell constant, cm⁻¹
+ * @throws OutOfDomainError outside 0.001 to 100 cm⁻¹: a length in cm, or a value per m
+ * Accuracy: exact.
+ * Source: bench-practice.
+ * @example requireCellConstant(1.01166) // 1.01166
+ */
 export function requireCellConstant(cellConstantPerCm: number): number {
   return requireWithin('cell constant', cellConstantPerCm, 'cm⁻¹', LOWEST_PER_CM, HIGHEST_PER_CM, SWAPPED);
 }

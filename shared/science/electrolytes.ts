@@ -258,7 +258,7 @@ export function limitingMolarConductivity(options: { salt: Salt; temperatureC: n
  * @throws OutOfDomainError outside 0 to 55 °C
  * Accuracy: 0.04 % from 5 °C, 0.1 % below.
  * Source: harned-owen.
- * @example kclLimitingConductivityFromZero(0) // ≈ 81.95
+ * @example kclLimitingConductivityFromZero(0) // ≈ 81.66
  */
 export function kclLimitingConductivityFromZero(temperatureC: number): number {
   requireWithin('temperature', temperatureC, '°C', 0, HIGHEST_C);

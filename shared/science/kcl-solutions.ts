@@ -133,7 +133,7 @@ const DILUTE_RELATIVE_STANDARD_UNCERTAINTY = constant(1e-3, 'relative', 'pratt-2
  * @throws OutOfDomainError outside these ranges
  * Accuracy: 0.05 % from 15 to 35 °C, 0.1 % from 0 to 50 °C, at 0.01 mol/L; better when more dilute.
  * Source: onsager-1927 with harned-owen, checked against pratt-2001.
- * @example diluteKclTemperatureRatio({ concentrationMolL: 5.69e-4, temperatureC: 20 }).ratio // ≈ 0.9036
+ * @example diluteKclTemperatureRatio({ concentrationMolL: 5.69e-4, temperatureC: 20 }).ratio // ≈ 0.90354
  */
 export function diluteKclTemperatureRatio(options: { concentrationMolL: number; temperatureC: number }): {
   ratio: number;

@@ -54,7 +54,15 @@ export function onsagerValidity(options: { salt: Salt; concentrationMolL: number
 /** A limit met exactly counts as met, whatever the last bit of a product of equivalents says. */
 const exceeds = (value: number, limit: number): boolean => value > limit * (1 + 1e-12);
 
-/** Refuses the limiting law where onsagerValidity says so, with the reason and the limit in the message. */
+/**
+ * Refuses the limiting law where onsagerValidity says so, with the reason and the limit in the message.
+ *
+ * @param salt formula, one of `salts`
+ * @param concentrationMolL concentration, mol/L
+ * @throws OutOfDomainError above 5e-3 equivalents/L, RefusedModelError for a 2:2 salt
+ * Source: the law against crc-equivalent-conductivity.
+ * @example refuseBeyondValidity('KCl', 0.001) // undefined
+ */
 export function refuseBeyondValidity(salt: Salt, concentrationMolL: number): void {
   if (onsagerValidity({ salt, concentrationMolL }).validity !== 'refused') return;
   const { cationCharge, anionCharge, equivalentsPerMole } = saltComposition(salt);
