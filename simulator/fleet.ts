@@ -11,6 +11,8 @@ import { StateStore } from './state-store.ts';
 import { Ticker } from './ticker.ts';
 
 const SAVE_EVERY_MS = 60_000;
+/** A broker that goes away troubles every device at once: said in one line. */
+const REPORT_EVERY_MS = 2000;
 /** New connections a second: a broker hashing passwords needs time for each. */
 const CONNECTS_PER_SECOND = 40;
 const DEFAULT_SOLUTION_C = 22;
@@ -60,6 +62,7 @@ export class Fleet {
   readonly counts: PublisherCounts = { readingsAcknowledged: 0, messagesAcknowledged: 0, connections: 0 };
   readonly ticker: Ticker;
   private readonly members: Member[] = [];
+  private readonly troubles = new Map<string, string[]>();
   private readonly options: FleetOptions;
   private readonly store: StateStore;
   private readonly solutions: Map<string, ReferenceSolution>;
@@ -109,7 +112,7 @@ export class Fleet {
       seed,
       ticker: this.ticker,
       wall: this.wall,
-      report: this.options.report,
+      report: (device, trouble) => this.noteTrouble(device, trouble),
       counts: this.counts,
       onLastingChange: () => this.save(),
     });
@@ -124,7 +127,22 @@ export class Fleet {
       this.schedule(member, 1);
     });
     this.ticker.every(SAVE_EVERY_MS, () => this.save());
+    this.ticker.every(REPORT_EVERY_MS, () => this.reportTroubles());
     this.ticker.start();
+  }
+
+  private noteTrouble(device: string, trouble: string): void {
+    const devices = this.troubles.get(trouble);
+    if (devices) devices.push(device);
+    else this.troubles.set(trouble, [device]);
+  }
+
+  private reportTroubles(): void {
+    for (const [trouble, devices] of this.troubles) {
+      const others = devices.length > 1 ? ` and ${devices.length - 1} more` : '';
+      this.options.report(`${devices[0]}${others}: ${trouble}`);
+    }
+    this.troubles.clear();
   }
 
   /** Puts the probe's readings on the ticker, spread over its interval so that the fleet does not speak in chorus. */

@@ -5,6 +5,8 @@ import { Fleet } from './fleet.ts';
 import type { FleetFile } from './scenario/fleet-file.ts';
 
 const REPORT_EVERY_MS = 60_000;
+/** A broker that no longer answers must not keep the process alive. */
+const GOODBYE_MS = 5000;
 
 function readFleetFile(path: string): FleetFile {
   if (!existsSync(path)) {
@@ -36,6 +38,7 @@ async function run(options: RunOptions): Promise<void> {
     if (isStopping) return;
     isStopping = true;
     control.close();
+    setTimeout(() => process.exit(0), GOODBYE_MS).unref();
     await fleet.stop();
     process.exit(0);
   };
@@ -52,6 +55,9 @@ async function main(): Promise<void> {
     if (!answer.isDone) process.exitCode = 1;
   }
 }
+
+// A reader that has seen enough ("list | head") closes the pipe; that is no failure.
+process.stdout.on('error', () => process.exit());
 
 try {
   await main();

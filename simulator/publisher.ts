@@ -33,7 +33,7 @@ export interface PublisherOptions {
   seed: number;
   ticker: Ticker;
   wall: () => number;
-  report: (line: string) => void;
+  report: (device: string, trouble: string) => void;
   counts: PublisherCounts;
   /** Called when a setting or the probe changed for good, so that it can be kept on disk. */
   onLastingChange: () => void;
@@ -98,9 +98,9 @@ export class Publisher {
 
   /** Says a trouble once, not at every attempt. */
   private note(trouble: string): void {
-    if (trouble === this.lastTrouble) return;
+    if (trouble === this.lastTrouble || this.isStopping) return;
     this.lastTrouble = trouble;
-    this.options.report(`${this.device.name}: ${trouble}`);
+    this.options.report(this.device.name, trouble);
   }
 
   private introduce(client: MqttClient): void {
