@@ -137,7 +137,7 @@ const greatestCommonDivisor = (a: number, b: number): number =>
  * @example saltComposition('CaCl2').equivalentsPerMole // 2
  */
 export function saltComposition(salt: Salt): SaltComposition {
-  const ions: readonly [Ion, Ion] | undefined = IONS_OF[salt];
+  const ions: readonly [Ion, Ion] | undefined = Object.hasOwn(IONS_OF, salt) ? IONS_OF[salt] : undefined;
   if (ions === undefined)
     throw new InvalidInputError(`Unknown salt ${String(salt)}: use one of ${salts.join(', ')}.`);
   const [cation, anion] = ions;
@@ -182,7 +182,7 @@ const HIGHEST_C = constant(55, '°C', 'harned-owen').value;
  */
 export function limitingIonicConductivity(options: { ion: Ion; temperatureC: number }): number {
   const { ion, temperatureC } = options;
-  if (!(ion in CHARGE)) throw new InvalidInputError(`Unknown ion ${String(ion)}.`);
+  if (!Object.hasOwn(CHARGE, ion)) throw new InvalidInputError(`Unknown ion ${String(ion)}.`);
   requireWithin('temperature', temperatureC, '°C', LOWEST_C, HIGHEST_C);
   const cubic = cubicOf(ion);
   if (cubic !== undefined) return evaluateCubic(cubic, temperatureC);
