@@ -1,0 +1,7 @@
+/** Every job there is. */
+import type { Job } from './job.ts';
+import { createReadingPartitions } from './create-reading-partitions.ts';
+import { rollUpReadings } from './roll-up-readings.ts';
+import { sendDueMails } from './send-due-mails.ts';
+
+export const jobs: readonly Job[] = [createReadingPartitions, rollUpReadings, sendDueMails];
