@@ -5,7 +5,7 @@ import { faultKinds, type FaultKind } from './faults.ts';
 import type { Deed } from './fleet.ts';
 
 export const defaultControlPath = '.data/simulator.sock';
-export const defaultCredentialsPath = '.data/simulator-devices.json';
+export const defaultCredentialsPath = '.data/simulator.json';
 export const defaultStatePath = '.data/simulator-state.json';
 
 const faultLines = Object.entries(faultKinds).map(([kind, text]) => `    ${kind.padEnd(12)} ${text}`);
