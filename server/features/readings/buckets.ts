@@ -13,10 +13,22 @@ const ladderSeconds = [
   345_600,
 ] as const;
 
-/** The shortest bucket that keeps the window within the limit, and whether the summaries can serve it. */
-export function chooseBuckets(windowMs: number): { seconds: number; fromRollups: boolean } {
+/**
+ * The shortest bucket that keeps the window within the limit, and whether the summaries serve it. Where the single
+ * readings are gone (`onlyRollups`), nothing finer than a summary is left.
+ */
+export function chooseBuckets(
+  windowMs: number,
+  onlyRollups: boolean,
+): { seconds: number; fromRollups: boolean } {
   // A window that starts inside a bucket touches one more than its length asks for.
-  const fits = (seconds: number) => Math.ceil(windowMs / 1000 / seconds) + 1 <= maxSeriesPoints;
+  const fits = (seconds: number) =>
+    Math.ceil(windowMs / 1000 / seconds) + 1 <= maxSeriesPoints && (!onlyRollups || seconds >= rollupSeconds);
   const seconds = ladderSeconds.find(fits) ?? ladderSeconds.at(-1)!;
   return { seconds, fromRollups: seconds >= rollupSeconds };
 }
+
+/** True when summaries reach further back than the readings, which are kept for a shorter time. */
+export const isOlderThan = (oldestRollup: Date | null, oldestReading: Date | undefined): boolean =>
+  oldestRollup !== null &&
+  (oldestReading === undefined || oldestRollup.getTime() + rollupSeconds * 1000 <= oldestReading.getTime());

@@ -278,6 +278,16 @@ export function selectRollupBuckets(
   );
 }
 
+/** Start of the oldest summary in the window; null when there is none. */
+export async function selectOldestRollup({ sequelize }: Database, window: Window): Promise<Date | null> {
+  const [row] = await sequelize.query<{ at: Date | null }>(
+    `select min(bucket_at) as at from reading_rollups
+     where probe_id = $probeId and bucket_at >= $from and bucket_at < $to`,
+    { type: QueryTypes.SELECT, bind: { ...window } },
+  );
+  return row?.at ?? null;
+}
+
 /** Where a probe stood during a window, with what the point asked for. */
 export interface StandRow {
   fromAt: Date;

@@ -6,11 +6,12 @@ import type { Actor } from '../../http/actor.ts';
 import { authorise } from '../../http/authorise.ts';
 import type { Parts } from '../../parts.ts';
 import { readSetting } from '../settings/service.ts';
-import { chooseBuckets, longestWindowMs } from './buckets.ts';
+import { chooseBuckets, isOlderThan, longestWindowMs } from './buckets.ts';
 import { readingPolicy } from './policy.ts';
 import type { SeriesFacts } from './presenter.ts';
 import {
   selectComparisons,
+  selectOldestRollup,
   selectReadingBuckets,
   selectRollupBuckets,
   selectSingleReadings,
@@ -70,12 +71,15 @@ export async function readSeries(parts: Parts, actor: Actor, query: SeriesQuery)
   if (!probe) throw new AppError('probes.not-found');
   authorise(readingPolicy, 'read', actor, probe.siteId, codes);
 
-  const [stands, single] = await Promise.all([
+  const [stands, single, oldestRollup] = await Promise.all([
     selectStands(parts, window),
     selectSingleReadings(parts, window, maxSeriesPoints + 1),
+    selectOldestRollup(parts, window),
   ]);
-  if (single.length <= maxSeriesPoints) return { ...window, stands, rows: single, bucketSeconds: null };
-  const { seconds, fromRollups } = chooseBuckets(lengthMs);
+  const onlyRollups = isOlderThan(oldestRollup, single[0]?.at);
+  if (single.length <= maxSeriesPoints && !onlyRollups)
+    return { ...window, stands, rows: single, bucketSeconds: null };
+  const { seconds, fromRollups } = chooseBuckets(lengthMs, onlyRollups);
   const select = fromRollups ? selectRollupBuckets : selectReadingBuckets;
   return { ...window, stands, rows: await select(parts, window, seconds), bucketSeconds: seconds };
 }
