@@ -8,9 +8,12 @@ export interface Submission {
   refusal: string | null;
   /** What is wrong with one field, by its contract path. */
   issueFor: (path: string) => string | undefined;
-  /** Runs the write once; resolves to whether it was accepted. */
-  submit: (write: () => Promise<unknown>) => Promise<boolean>;
+  /** Runs the write once; resolves to whether it was accepted. Issues found here already keep it from being sent. */
+  submit: (write: () => Promise<unknown>, found?: Issues) => Promise<boolean>;
 }
+
+/** What is wrong, by contract path. */
+export type Issues = Readonly<Record<string, string>>;
 
 /**
  * The life of one form: pending, refused field by field, or done. The server is the judge; its sentences stand beside
@@ -19,18 +22,22 @@ export interface Submission {
 export function useSubmission(form?: RefObject<HTMLElement | null>): Submission {
   const [isPending, setIsPending] = useState(false);
   const [error, setError] = useState<unknown>(null);
+  const [found, setFound] = useState<Issues>({});
   useEffect(() => {
-    if (error) form?.current?.querySelector<HTMLElement>('[aria-invalid="true"]')?.focus();
-  }, [error, form]);
+    if (error || Object.keys(found).length > 0)
+      form?.current?.querySelector<HTMLElement>('[aria-invalid="true"]')?.focus();
+  }, [error, found, form]);
   const problem = error instanceof HttpProblem ? error : null;
   return {
     isPending,
     refusal: error && !(problem && problem.issues.length > 0) ? sentenceOf(error) : null,
-    issueFor: (path) => problem?.issueFor(path),
-    submit: async (write) => {
+    issueFor: (path) => found[path] ?? problem?.issueFor(path),
+    submit: async (write, issues = {}) => {
       if (isPending) return false;
-      setIsPending(true);
       setError(null);
+      setFound(issues);
+      if (Object.keys(issues).length > 0) return false;
+      setIsPending(true);
       try {
         await write();
         return true;

@@ -1,5 +1,6 @@
 import type { LivePoint } from '../../../../shared/contracts/realtime.ts';
 import type { LiveRow } from '../../../../shared/contracts/readings.ts';
+import type { ReadingContext } from '../../../../shared/contracts/vocabulary.ts';
 import { capitalise, DISPLAY_UNIT_LABELS, PROBE_KIND_LABELS } from '../../../../shared/format/labels.ts';
 import type { ValueWithUncertainty } from '../../../../shared/format/numbers.ts';
 import { formatConductivity } from '../../../../shared/format/numbers.ts';
@@ -11,17 +12,22 @@ import { paths } from '../../paths.ts';
 /** What a row shows of its reading now. */
 export interface ReadingNow {
   at: string;
+  context: ReadingContext;
+  /** Raw, at its own temperature. */
+  conductivityUsCm: number | null;
   valueUsCm: number | null;
   expandedUncertaintyUsCm: number | null;
   temperatureC: number | null;
 }
 
 /** The newer of what was fetched and what has come live since. */
-export function readingNow(row: LiveRow, latest: LivePoint | null): ReadingNow | null {
+export function readingNow(row: Pick<LiveRow, 'reading'>, latest: LivePoint | null): ReadingNow | null {
   const { reading } = row;
   if (!latest || (reading && latest.at <= reading.at)) return reading;
   return {
     at: latest.at,
+    context: latest.context as ReadingContext,
+    conductivityUsCm: latest.conductivityUsCm,
     valueUsCm: latest.valueUsCm,
     expandedUncertaintyUsCm: scaledUncertainty(reading, latest.valueUsCm),
     temperatureC: latest.temperatureC,

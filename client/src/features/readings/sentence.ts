@@ -13,7 +13,8 @@ interface Clause {
   isStrong?: boolean;
 }
 
-const verb = (count: number, one: string, many: string) => `${countInWords(count)} ${count === 1 ? one : many}`;
+const verb = (count: number, one: string, many: string) =>
+  `${countInWords(count)} ${count === 1 ? one : many}`;
 
 /** The situation at one site in one or two sentences: how many readings are fit, then every exception, gravest last. */
 export function siteSentence(rows: readonly LiveRow[], now: number): SentencePart[] {

@@ -55,7 +55,8 @@ function ReleaseDialog({ point, onClose }: { point: HoldablePoint; onClose: () =
     >
       {hold ? (
         <p>
-          Held for <b>{hold.userName}</b>: {hold.reason}, expected back {formatDateTime(hold.untilAt, { offset: true })}.
+          Held for <b>{hold.userName}</b>: {hold.reason}, expected back{' '}
+          {formatDateTime(hold.untilAt, { offset: true })}.
         </p>
       ) : null}
     </ConfirmDialog>
