@@ -117,6 +117,23 @@ describe('properties', () => {
   });
 });
 
+test('a result that sits on a limit stays there in every unit, though its digits round differently', () => {
+  for (let tenths = 1; tenths < 30; tenths += 1) {
+    for (const unit of [1, 1e-3, 0.1, 7, 1e4]) {
+      const at = (error: number) =>
+        decide({
+          error: error * unit,
+          expandedUncertainty: ((30 - tenths) / 10) * unit,
+          coverageFactor: 2,
+          tolerance: 3 * unit,
+          rule: 'guarded-u',
+        }).outcome;
+      expect(at(tenths / 10)).toBe('within-clear');
+      expect(at(tenths / 10 + 1e-6)).toBe('within-unsure');
+    }
+  }
+});
+
 describe('without uncertainty', () => {
   test('the limit itself is within, and beyond it the probability is 1', () => {
     expect(probabilityOutside({ error: 3, standardUncertainty: 0, tolerance: 3 })).toBe(0);
