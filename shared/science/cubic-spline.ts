@@ -18,8 +18,8 @@ function requireIncreasing(x: readonly number[], y: readonly number[]): void {
       reason: `it needs at least two rows and one value for each; it has ${x.length} and ${y.length}`,
     });
   }
-  x.forEach((value, index) => {
-    requireFinite('table argument', value, '');
+  for (let index = 0; index < x.length; index += 1) {
+    const value = requireFinite('table argument', at(x, index), '');
     requireFinite('table value', at(y, index), '');
     if (index > 0 && value <= at(x, index - 1)) {
       throw new InconsistentInputError({
@@ -27,7 +27,7 @@ function requireIncreasing(x: readonly number[], y: readonly number[]): void {
         reason: `its rows must rise: ${value} follows ${at(x, index - 1)}`,
       });
     }
-  });
+  }
 }
 
 /** Gaussian elimination of a tridiagonal system, bands a (below), b (diagonal), c (above), right side d. */
