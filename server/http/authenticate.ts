@@ -77,7 +77,9 @@ export function createSessions(parts: Parts): SessionKit {
   return {
     middleware,
     passport: compose(authenticator.session() as RequestHandler, (request, _response, next) => {
-      request.app.locals['authenticator'] = authenticator;
+      // The handshake of a socket has no app behind it, and nobody signs in there.
+      const app = request.app as Request['app'] | undefined;
+      if (app) app.locals['authenticator'] = authenticator;
       next();
     }),
     close: async () => {
