@@ -7,7 +7,7 @@ import { need, type Loading } from './loading.ts';
 
 const minuteMs = 60_000;
 const silent = { point: 'sk-32', minutes: 58 };
-const held = { point: 'sk-21', by: 'ines', reason: 'In a bottle for calibration', forMinutes: 180 };
+const held = { point: 'sk-21', by: 'ines', reason: 'in a bottle for calibration', forMinutes: 180 };
 const tampered = { point: 'sk-12', factor: 1.097 };
 
 const pointOfProbe = new Map<string, string>();

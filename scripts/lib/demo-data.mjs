@@ -18,7 +18,7 @@ export async function recreateDatabase(cluster) {
 }
 
 export const loadDemo = (supervisor, env) =>
-  step('Loading the demo: three sites with two years of history', () =>
+  step('Loading the demo: four sites with two years of history', () =>
     supervisor.run(typescript('scripts/load-demo.ts'), {
       env,
       failure: 'The demo could not be loaded.',

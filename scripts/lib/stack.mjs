@@ -37,14 +37,17 @@ export function startServer(
   });
 }
 
-/** The demo's probes, when the demo is there and nobody asked for silence. */
+/**
+ * The demo's probes, when the demo is there and nobody asked for silence. Their readings go without the flag
+ * `simulated`: the points they stand at are imaginary too, and a real point never believes a simulated value.
+ */
 export function startSimulator(supervisor, settings, { hasDemo }) {
   if (!hasDemo || !settings.simulates || !settings.ingests || !existsSync(simulatorFile)) return false;
   const broker = settings.outsideBroker ?? `mqtt://${settings.shownHost}:${settings.mqttPort}`;
   supervisor.start({
     name: 'simulator',
     title: 'The simulator',
-    args: typescript('simulator/main.ts', '--credentials', simulatorFile, '--url', broker),
+    args: typescript('simulator/main.ts', '--credentials', simulatorFile, '--url', broker, '--unmarked'),
     env: process.env,
     order: stopOrder.beside,
   });

@@ -307,9 +307,13 @@ const quarrybank: PointSeed[] = [
     hazardTags: ['electrical'],
   }),
   point('purity', 'qb-02', 'feed-water', 'Feed, boiler 1', 'Feed water', 'boiler-feed-1', {
+    // Dosed feed water carries too much salt for the ultrapure model (10 µS/cm).
+    compensation: linear(0.02),
     limitHighUsCm: 30,
   }),
   point('purity', 'qb-03', 'feed-water', 'Feed, boiler 2', 'Feed water', 'boiler-feed-2', {
+    // Dosed feed water carries too much salt for the ultrapure model (10 µS/cm).
+    compensation: linear(0.02),
     limitHighUsCm: 30,
   }),
   point('condensate', 'qb-11', 'condensate', 'Condensate return', 'Condensate', 'condensate-a', {
