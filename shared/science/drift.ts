@@ -48,7 +48,10 @@ export interface DriftRate extends DriftStep {
 /** A rate is called significant beyond this many standard uncertainties (about 95 %). */
 const SIGNIFICANT_RATIO = 2;
 
-/** Whether a rate differs from 0 by more than its uncertainty explains. */
+/**
+ * Whether a rate differs from 0 by more than its uncertainty explains: |b| > 2 u(b).
+ * @example isBeyondNoise({ ratePerDay: 0.005, standardUncertainty: 0.002 }) // true
+ */
 export const isBeyondNoise = ({ ratePerDay, standardUncertainty }: DriftStep): boolean =>
   Math.abs(ratePerDay) > SIGNIFICANT_RATIO * standardUncertainty;
 
@@ -81,7 +84,10 @@ export function driftStep(segment: DriftSegment): DriftStep {
   return { ratePerDay: (asFoundError - asLeftError) / days, standardUncertainty: Math.sqrt(variance) / days };
 }
 
-/** Mean weighted by 1/u², its uncertainty from the stated ones alone, and the misfit about it. */
+/**
+ * Mean weighted by 1/u², its uncertainty from the stated ones alone, and the misfit about it. At least one step, each u above 0.
+ * @example combineSteps([{ ratePerDay: 1, standardUncertainty: 1 }, { ratePerDay: 4, standardUncertainty: 2 }]).mean // ≈ 1.6
+ */
 export function combineSteps(steps: readonly DriftStep[]): {
   mean: number;
   internal: number;
@@ -151,13 +157,18 @@ export interface ErrorForecast {
   randomWalkPerDay?: number;
 }
 
-export function requireForecast(forecast: ErrorForecast): void {
+/**
+ * Returns the forecast when each of its numbers is in its range, refuses it otherwise.
+ * @example requireForecast({ asLeftError: 0.1, uAsLeft: 0.4, ratePerDay: 0.005, uRate: 0.003, tolerance: 3 }).tolerance // ≈ 3
+ */
+export function requireForecast(forecast: ErrorForecast): ErrorForecast {
   requireFinite('as-left error', forecast.asLeftError, '');
   requireNonNegative('uncertainty of the as-left error', forecast.uAsLeft, '');
   requireFinite('drift rate per day', forecast.ratePerDay, '');
   requireNonNegative('uncertainty of the drift rate', forecast.uRate, '');
   requirePositive('tolerance', forecast.tolerance, '');
   requireNonNegative('random walk per day', forecast.randomWalkPerDay ?? 0, '');
+  return forecast;
 }
 
 /**

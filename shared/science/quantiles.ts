@@ -18,7 +18,10 @@ import {
 /** Above this the t distribution equals the normal to the last digit of a double, and the library's t inverse underflows. */
 const DEGREES_OF_FREEDOM_TAKEN_AS_INFINITE = 1e12;
 
-/** Refuses a probability that is not strictly between 0 and 1: its quantile would be infinite. */
+/**
+ * Refuses a probability that is not strictly between 0 and 1: its quantile would be infinite.
+ * @example requireProbability('coverage probability', 0.95) // ≈ 0.95
+ */
 export function requireProbability(quantity: string, probability: number): number {
   if (probability > 0 && probability < 1) return probability;
   throw new OutOfDomainError({
@@ -31,7 +34,10 @@ export function requireProbability(quantity: string, probability: number): numbe
   });
 }
 
-/** Refuses fewer than one degree of freedom; Infinity is welcome. */
+/**
+ * Refuses fewer than one degree of freedom; Infinity is welcome.
+ * @example requireDegreesOfFreedom('degrees of freedom', 4) // ≈ 4
+ */
 export function requireDegreesOfFreedom(quantity: string, degreesOfFreedom: number): number {
   if (degreesOfFreedom >= 1) return degreesOfFreedom;
   throw new OutOfDomainError({ quantity, value: degreesOfFreedom, unit: '', lower: 1, upper: null });
@@ -113,7 +119,7 @@ export function tQuantile(probability: number, degreesOfFreedom: number): number
  * @returns probability, 0 to 1.
  * @throws OutOfDomainError outside those ranges.
  * Accuracy: 1e-13. Source: gum-2008 annex G.3.
- * @example tProbabilityBelow(2.776, 4) // ≈ 0.9749884773
+ * @example tProbabilityBelow(2.776, 4) // ≈ 0.97498861
  */
 export function tProbabilityBelow(t: number, degreesOfFreedom: number): number {
   requireFinite('Student t', t, '');

@@ -112,7 +112,7 @@ function rootSumOfSquares(rows: BudgetRow[]): number {
  * @throws InconsistentInputError for an empty list: no component is not the same as no uncertainty.
  * Accuracy: 1e-13 relative. Components must be independent: correlated ones are combined before they get here.
  * Source: gum-2008 eq. 10, eq. G.2b, G.4.1.
- * @example combineUncertainty({ components: [{ name: 'lot', value: 0.5, divisor: 2, distribution: 'normal' }, { name: 'thermometer', value: 0.1, sensitivity: 1.944, distribution: 'rectangular' }] }).standard // ≈ 0.27410
+ * @example combineUncertainty({ components: [{ name: 'lot', value: 0.5, divisor: 2, distribution: 'normal' }, { name: 'thermometer', value: 0.1, sensitivity: 1.944, distribution: 'rectangular' }] }).standard // ≈ 0.27404
  */
 export function combineUncertainty(options: {
   components: readonly UncertaintyComponent[];
