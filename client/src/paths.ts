@@ -53,6 +53,7 @@ export const paths = {
   point: address('/points/:id'),
 
   standards: address('/standards'),
+  calculator: address('/standards/calculator'),
   newStandard: address('/standards/new'),
   standard: address('/standards/:id'),
 

@@ -16,6 +16,8 @@ const shellPages: readonly [address: { pattern: string }, element: React.ReactNo
   [paths.live, page(() => import('./routes/live-page.tsx'))],
   [paths.liveSite, page(() => import('./routes/live-site-page.tsx'))],
   [paths.probe, page(() => import('./routes/probe-page.tsx'))],
+  [paths.probes, page(() => import('./routes/probes-page.tsx'))],
+  [paths.newProbe, page(() => import('./routes/new-probe-page.tsx'))],
   [paths.account, page(() => import('./routes/account-page.tsx'))],
 ];
 
