@@ -163,6 +163,8 @@ function linesOf(points: readonly SeriesDatum[], colours: ChartColours): Line[] 
           {
             data: [{ x: last.t, y: last.mean }],
             pointRadius: 4,
+            // Half of the last dot lies beyond the plot.
+            clip: 6,
             pointBackgroundColor: colours.ink,
             pointBorderWidth: 0,
           },

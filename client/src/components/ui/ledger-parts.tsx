@@ -1,4 +1,5 @@
 import type { CSSProperties, ReactNode, Ref } from 'react';
+import { memo } from 'react';
 import { Link } from 'react-router-dom';
 import { classNames } from './button.tsx';
 
@@ -52,7 +53,7 @@ interface LedgerHeadProps<Row> extends Pick<LedgerBaseProps<Row>, 'columns' | 's
 export function LedgerHead<Row>({ columns, sort, onSort, isSticky = false }: LedgerHeadProps<Row>) {
   return (
     <div role="rowgroup" className={classNames('ledger-head-group', isSticky && 'is-sticky')}>
-      <div role="row" className={classNames('ledger-head', isSticky && 'is-sticky')}>
+      <div role="row" className="ledger-head">
         {columns.map((column) => (
           <HeadCell key={column.key} column={column} sort={sort} onSort={onSort} />
         ))}
@@ -122,7 +123,10 @@ interface LedgerRowProps<Row> extends Pick<
   offset?: number;
 }
 
-export function LedgerRow<Row>(props: LedgerRowProps<Row>) {
+/** Memoised: while a long ledger scrolls, only the rows that come new are drawn. */
+export const LedgerRow = memo(PlainLedgerRow) as typeof PlainLedgerRow;
+
+function PlainLedgerRow<Row>(props: LedgerRowProps<Row>) {
   const { row, columns, rowHref, rowState, phone, isNarrow, index, measure, dataIndex, offset } = props;
   const state = rowState?.(row) ?? 'plain';
   const href = rowHref?.(row);

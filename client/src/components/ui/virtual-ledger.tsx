@@ -42,6 +42,8 @@ export function VirtualLedger<Row>(props: VirtualLedgerProps<Row>) {
     estimateSize: () => (isPhone ? phoneRowHeight : rowHeight),
     overscan: OVERSCAN,
     scrollMargin: top,
+    // A synchronous render for every scroll event would hold up the scrolling itself.
+    useFlushSync: false,
     getItemKey: (index) => {
       const row = rows[index];
       return row === undefined ? index : rowKey(row);
