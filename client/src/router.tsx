@@ -15,9 +15,14 @@ const page = (load: () => Promise<{ default: ComponentType }>) => {
 const shellPages: readonly [address: { pattern: string }, element: React.ReactNode][] = [
   [paths.live, page(() => import('./routes/live-page.tsx'))],
   [paths.liveSite, page(() => import('./routes/live-site-page.tsx'))],
+  [paths.probes, page(() => import('./routes/probes-page.tsx'))],
+  [paths.newProbe, page(() => import('./routes/new-probe-page.tsx'))],
   [paths.probe, page(() => import('./routes/probe-page.tsx'))],
   [paths.probes, page(() => import('./routes/probes-page.tsx'))],
   [paths.newProbe, page(() => import('./routes/new-probe-page.tsx'))],
+  [paths.points, page(() => import('./routes/points-page.tsx'))],
+  [paths.point, page(() => import('./routes/point-page.tsx'))],
+  [paths.newPoint, page(() => import('./routes/new-point-page.tsx'))],
   [paths.account, page(() => import('./routes/account-page.tsx'))],
 ];
 
