@@ -80,6 +80,17 @@ export const point = requirements.extend({
 });
 export type Point = z.infer<typeof point>;
 
+/** A probe that stood, or stands, at a point. */
+export const pointProbe = z.object({
+  id,
+  tag: z.string(),
+  serial: z.string(),
+  kind: z.string(),
+  fromAt: instant,
+  toAt: instant.nullable(),
+});
+export type PointProbe = z.infer<typeof pointProbe>;
+
 const code = z
   .string()
   .trim()

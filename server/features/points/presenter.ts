@@ -1,9 +1,9 @@
-import type { Point } from '../../../shared/contracts/points.ts';
+import type { Point, PointProbe } from '../../../shared/contracts/points.ts';
 import type { Actor } from '../../http/actor.ts';
 import { may } from '../../http/authorise.ts';
 import { probePolicy } from '../probes/policy.ts';
 import { pointPolicy } from './policy.ts';
-import type { PointRow } from './queries.ts';
+import type { PointProbeRow, PointRow } from './queries.ts';
 
 type HoldFacts = Pick<PointRow, 'holdUserId' | 'holdUserName' | 'holdReason' | 'holdFromAt' | 'holdUntilAt'>;
 
@@ -71,3 +71,9 @@ export function presentPoint(row: PointRow, actor: Actor): Point {
     },
   };
 }
+
+export const presentPointProbe = ({ fromAt, toAt, ...probe }: PointProbeRow): PointProbe => ({
+  ...probe,
+  fromAt: fromAt.toISOString(),
+  toAt: toAt?.toISOString() ?? null,
+});

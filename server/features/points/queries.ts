@@ -111,3 +111,25 @@ export async function countPoints(parts: Pick<Parts, 'sequelize'>, filter: Point
   );
   return row?.total ?? 0;
 }
+
+export interface PointProbeRow {
+  id: number;
+  tag: string;
+  serial: string;
+  kind: string;
+  fromAt: Date;
+  toAt: Date | null;
+}
+
+/** Every probe that stood at a point, newest first; a probe that came back stands there twice. */
+export function selectPointProbes(
+  { sequelize }: Pick<Parts, 'sequelize'>,
+  pointId: number,
+): Promise<PointProbeRow[]> {
+  return sequelize.query<PointProbeRow>(
+    `select pr.id, pr.tag, pr.serial, pr.kind, at.from_at as "fromAt", at.to_at as "toAt"
+     from assignments at join probes pr on pr.id = at.probe_id
+     where at.point_id = $pointId order by at.from_at desc, at.id desc`,
+    { type: QueryTypes.SELECT, bind: { pointId } },
+  );
+}

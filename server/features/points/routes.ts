@@ -4,11 +4,12 @@ import {
   createPoint,
   holdPoint,
   point,
+  pointProbe,
   pointsQuery,
   retirePoint,
 } from '../../../shared/contracts/points.ts';
 import { route, type AnyRoute } from '../../http/route.ts';
-import { presentPoint } from './presenter.ts';
+import { presentPoint, presentPointProbe } from './presenter.ts';
 import * as points from './service.ts';
 
 export const pointRoutes: AnyRoute[] = [
@@ -43,6 +44,18 @@ export const pointRoutes: AnyRoute[] = [
     answer: point,
     run: async ({ parts, actor, params }) =>
       presentPoint(await points.readPoint(parts, actor, params.id), actor),
+  }),
+  route({
+    verb: 'get',
+    path: '/api/points/:id/probes',
+    access: 'session',
+    does: 'Lists the probes that stood at a measuring point, newest first.',
+    params: idPath,
+    answer: listOf(pointProbe),
+    run: async ({ parts, actor, params }) => {
+      const items = await points.listPointProbes(parts, actor, params.id);
+      return { items: items.map(presentPointProbe), total: items.length, nextCursor: null };
+    },
   }),
   route({
     verb: 'patch',

@@ -19,7 +19,14 @@ import { containsPattern } from '../../lib/text-pattern.ts';
 import type { Parts } from '../../parts.ts';
 import { recordAuditEvent } from '../audit-events/service.ts';
 import { pointPolicy } from './policy.ts';
-import { countPoints, selectPoints, type PointFilter, type PointRow } from './queries.ts';
+import {
+  countPoints,
+  selectPointProbes,
+  selectPoints,
+  type PointFilter,
+  type PointProbeRow,
+  type PointRow,
+} from './queries.ts';
 
 const codes = { notFound: 'points.not-found', forbidden: 'points.forbidden' } as const;
 const areaCodes = { notFound: 'areas.not-found', forbidden: 'points.forbidden' } as const;
@@ -70,6 +77,12 @@ export async function readPoint(parts: Parts, actor: Actor, id: number): Promise
   if (!row) throw new AppError('points.not-found');
   authorise(pointPolicy, 'read', actor, row.siteId, codes);
   return row;
+}
+
+/** The probes that stood at a point: who reads the point may read them. */
+export async function listPointProbes(parts: Parts, actor: Actor, id: number): Promise<PointProbeRow[]> {
+  await readPoint(parts, actor, id);
+  return selectPointProbes(parts, id);
 }
 
 /** A point locked for change, with its site. */

@@ -22,6 +22,15 @@ export const quarantineRoutes: AnyRoute[] = [
     },
   }),
   route({
+    verb: 'get',
+    path: '/api/quarantine/:id',
+    access: 'session',
+    does: 'Shows one quarantined message with its raw content.',
+    params: idPath,
+    answer: quarantinedMessage,
+    run: async ({ actor, params }) => presentQuarantined(await quarantine.readQuarantined(actor, params.id)),
+  }),
+  route({
     verb: 'post',
     path: '/api/quarantine/:id/resolve',
     access: 'session',

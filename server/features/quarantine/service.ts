@@ -43,6 +43,13 @@ export async function listQuarantined(actor: Actor, query: Query) {
   };
 }
 
+export async function readQuarantined(actor: Actor, id: number): Promise<QuarantinedMessage> {
+  authorise(actor, 'read');
+  const row = await QuarantinedMessage.findByPk(id);
+  if (!row) throw new AppError('quarantine.not-found');
+  return row;
+}
+
 export async function resolveQuarantined(
   parts: Parts,
   actor: Actor,
