@@ -159,6 +159,88 @@ export const errorCodes = define({
   'mails.forbidden': ['forbidden', 'Only an administrator reads the mail outbox.'],
   'mails.not-found': ['not-found', 'No such mail.'],
 
+  'procedures.not-found': ['not-found', 'No such procedure, or none that applies to this probe.'],
+  'procedures.forbidden': ['forbidden', 'Only a manager or an administrator edits procedures.'],
+  'procedures.changed-meanwhile': [
+    'conflict',
+    'Somebody issued a newer version meanwhile. Reload and repeat your change.',
+  ],
+  'procedures.order-impossible': [
+    'invalid',
+    'The steps of a procedure keep their order, and as found comes before cleaning and adjusting.',
+  ],
+
+  'bottles.not-found': ['not-found', 'No such bottle.'],
+  'bottles.forbidden': ['forbidden', 'Your role does not allow this for bottles.'],
+  'bottles.code-taken': ['conflict', 'Another bottle already has this code.'],
+  'bottles.unusable': [
+    'conflict',
+    'This bottle cannot be used: it is discarded, past its time after opening, or its lot is not usable.',
+  ],
+  'instruments.not-found': ['not-found', 'No such reference instrument.'],
+  'instruments.forbidden': ['forbidden', 'Your role does not allow changing reference instruments.'],
+  'instruments.code-taken': ['conflict', 'Another reference instrument already has this code.'],
+  'instruments.changed-meanwhile': [
+    'conflict',
+    'Somebody changed this instrument meanwhile. Reload and repeat your change.',
+  ],
+  'instruments.overdue': ['conflict', 'This reference instrument is past its due date or out of use.'],
+  'certificates.not-found': ['not-found', 'No such certificate file.'],
+  'certificates.type-unknown': ['invalid', 'The file is not a PDF, PNG or JPEG by its content.'],
+  'certificates.too-large': ['invalid', 'The file is larger than 10 MB.'],
+
+  'calibrations.not-found': ['not-found', 'No such calibration, or not one you may see.'],
+  'calibrations.forbidden': ['forbidden', 'Your role at this site does not allow this for calibrations.'],
+  'calibrations.already-running': [
+    'conflict',
+    'A calibration of this probe is running already. Resume it, or have it handed over.',
+  ],
+  'calibrations.not-installed': [
+    'conflict',
+    'The probe is not installed at a measuring point. Install it first.',
+  ],
+  'calibrations.not-performer': ['forbidden', 'Another person performs this run. Have it handed over first.'],
+  'calibrations.not-running': [
+    'conflict',
+    'This run is finished. Nothing in it can change; write an amendment instead.',
+  ],
+  'calibrations.lot-unusable': [
+    'conflict',
+    'This lot cannot be used: it is expired, quarantined or recalled. Another person may record an override.',
+  ],
+  'calibrations.step-order': [
+    'conflict',
+    'The steps of this procedure are done in their order. The current step is named below.',
+  ],
+  'calibrations.step-incomplete': ['invalid', 'This step is not complete. What is missing is named below.'],
+  'calibrations.wrong-probe': [
+    'conflict',
+    'This is not the probe of the run: its serial number or settings differ. Stop here and fetch the right one.',
+  ],
+  'calibrations.key-reused': ['conflict', 'This key was used before with other content. The first is kept.'],
+  'calibrations.capture-not-found': ['not-found', 'No such captured reading in this run.'],
+  'calibrations.capture-excluded': ['conflict', 'This captured reading is excluded already.'],
+  'calibrations.order-of-magnitude': [
+    'invalid',
+    'The typed value is far from what this solution shows. Check the unit and the decimal point, then confirm it.',
+  ],
+  'calibrations.adjustment-reason': [
+    'invalid',
+    'The cell constant would move by more than 3 %, or the guard says to leave it: give the reason.',
+  ],
+  'calibrations.constant-out-of-bounds': [
+    'conflict',
+    'The new cell constant would lie more than 10 % from nominal. Do not adjust: inspect or replace the probe.',
+  ],
+  'calibrations.password-wrong': ['invalid', 'The password is not right. The signature was not made.'],
+  'calibrations.own-approval': ['forbidden', 'The person who performed a run never approves it.'],
+  'calibrations.not-signed': ['conflict', 'Only a signed run can be reviewed.'],
+  'calibrations.hand-over-impossible': [
+    'conflict',
+    'A run is handed over to another technician of the same site.',
+  ],
+  'prompts.not-found': ['not-found', 'No such work prompt, or not one you may see.'],
+
   'reference.outside-domain': [
     'invalid',
     'The equation is not known to hold there. The limits are named below.',

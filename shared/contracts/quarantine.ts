@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { id, instant, listQuery, reason } from './common.ts';
-import { noticeKinds, quarantineCodes } from './vocabulary.ts';
+import { quarantineCodes } from './vocabulary.ts';
 
 export const quarantinedMessage = z.object({
   id,
@@ -22,18 +22,3 @@ export const quarantineQuery = listQuery.extend({
   code: z.enum(quarantineCodes).optional(),
   open: z.enum(['1']).optional(),
 });
-
-export const notice = z.object({
-  id,
-  kind: z.enum(noticeKinds),
-  at: instant,
-  deviceName: z.string().nullable(),
-  probeId: id.nullable(),
-  probeTag: z.string().nullable(),
-  text: z.string(),
-  closedAt: instant.nullable(),
-  can: z.object({ close: z.boolean() }),
-});
-export type Notice = z.infer<typeof notice>;
-export const closeNotice = z.object({ reason });
-export const noticesQuery = listQuery.extend({ open: z.enum(['1']).optional() });

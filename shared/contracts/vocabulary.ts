@@ -162,6 +162,77 @@ export type ProbeEventKind = (typeof probeEventKinds)[number];
 export const cellConstantOrigins = ['registered', 'calibration', 'device-reported'] as const;
 export type CellConstantOrigin = (typeof cellConstantOrigins)[number];
 
+/** The steps of a run in the order a procedure may name them; a procedure leaves out what does not apply. */
+export const runSteps = [
+  'identify',
+  'pre-checks',
+  'hold',
+  'as-found-process',
+  'as-found',
+  'clean',
+  'zero-in-air',
+  'as-found-cleaned',
+  'decide',
+  'second-point',
+  'temperature-sensor',
+  'as-left',
+  'reinstall',
+  'review',
+  'sign',
+] as const;
+export type RunStep = (typeof runSteps)[number];
+
+/** Steps that are made of captured readings. */
+export const captureSteps = [
+  'as-found-process',
+  'as-found',
+  'zero-in-air',
+  'as-found-cleaned',
+  'second-point',
+  'temperature-sensor',
+  'as-left',
+] as const;
+export type CaptureStep = (typeof captureSteps)[number];
+
+export const calibrationStatuses = [
+  'running',
+  'stopped',
+  'signed',
+  'returned',
+  'approved',
+  'amended',
+] as const;
+export type CalibrationStatus = (typeof calibrationStatuses)[number];
+
+export const captureSources = ['stream', 'typed'] as const;
+export type CaptureSource = (typeof captureSources)[number];
+
+/** Why a captured reading does not count; it stays visible, struck through. */
+export const exclusionCodes = [
+  'bubble',
+  'not-immersed',
+  'disturbed',
+  'wrong-solution',
+  'typing-slip',
+  'instrument-fault',
+] as const;
+export type ExclusionCode = (typeof exclusionCodes)[number];
+
+export const signatureMeanings = ['performed', 'approved', 'returned'] as const;
+export type SignatureMeaning = (typeof signatureMeanings)[number];
+
+export const instrumentKinds = ['meter', 'thermometer', 'cell', 'resistor-set', 'balance'] as const;
+export type InstrumentKind = (typeof instrumentKinds)[number];
+
+export const instrumentStates = ['in-use', 'out-of-use'] as const;
+export type InstrumentState = (typeof instrumentStates)[number];
+
+export const commandStates = ['waiting', 'confirmed', 'failed'] as const;
+export type CommandState = (typeof commandStates)[number];
+
+export const promptKinds = ['due-soon', 'overdue'] as const;
+export type PromptKind = (typeof promptKinds)[number];
+
 /** Slices that live updates speak of; one name each for URL, table, folder and query key. */
 export const slices = [
   'sites',
@@ -180,5 +251,11 @@ export const slices = [
   'audit-events',
   'settings',
   'mails',
+  'procedures',
+  'calibrations',
+  'bottles',
+  'instruments',
+  'certificates',
+  'prompts',
 ] as const;
 export type Slice = (typeof slices)[number];
