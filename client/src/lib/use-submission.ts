@@ -13,7 +13,7 @@ export interface Submission {
 }
 
 /** What is wrong, by contract path. */
-export type Issues = Readonly<Record<string, string>>;
+export type Issues = Readonly<Record<string, string | undefined>>;
 
 /**
  * The life of one form: pending, refused field by field, or done. The server is the judge; its sentences stand beside
@@ -36,7 +36,7 @@ export function useSubmission(form?: RefObject<HTMLElement | null>): Submission 
       if (isPending) return false;
       setError(null);
       setFound(issues);
-      if (Object.keys(issues).length > 0) return false;
+      if (isAny(issues)) return false;
       setIsPending(true);
       try {
         await write();
@@ -49,6 +49,10 @@ export function useSubmission(form?: RefObject<HTMLElement | null>): Submission 
       }
     },
   };
+}
+
+function isAny(issues: Issues): boolean {
+  return Object.values(issues).some((issue) => issue !== undefined);
 }
 
 function sentenceOf(error: unknown): string {

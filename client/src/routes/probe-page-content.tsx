@@ -56,14 +56,18 @@ export function ProbePageContent({ probe }: { probe: Probe }) {
         <div className="probe-column">
           <ReadingChart {...shared} name={probeName(probe)} />
           <CellConstantSection probeId={id} constants={probe.cellConstants} timeZone={timeZone} />
-          <ChecksTable probeId={id} timeZone={timeZone} />
         </div>
+        <Timeline probeId={id} timeZone={timeZone} />
+      </div>
+      <div className="probe-below">
+        <ChecksTable probeId={id} timeZone={timeZone} />
+      </div>
+      <div className="probe-below probe-facts">
+        <ProbeFacts probe={probe} />
+        <DeviceSection probe={probe} device={probe.device} can={probe.can} timeZone={timeZone} />
         <div className="probe-column">
-          <Timeline probeId={id} timeZone={timeZone} />
-          <DeviceSection probe={probe} device={probe.device} can={probe.can} timeZone={timeZone} />
-          <ProbeFacts probe={probe} />
-          <CellConstants probe={probe} timeZone={timeZone} />
           <Placements probe={probe} timeZone={timeZone} />
+          <CellConstants probe={probe} timeZone={timeZone} />
         </div>
       </div>
       {hold.dialogs}

@@ -33,7 +33,7 @@ function Shell() {
   const signOut = useSignOut();
   const navigate = useNavigate();
   const leave = () =>
-    signOut.mutate({ isEverywhere: false }, { onSuccess: () => navigate(paths.signIn.to()) });
+    signOut.mutate({ isEverywhere: false }, { onSuccess: () => void navigate(paths.signIn.to()) });
   return (
     <AppShell
       home={paths.live.to()}

@@ -1,6 +1,6 @@
 import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
 import type { ListOf } from '../../../../shared/contracts/common.ts';
-import type { Notice } from '../../../../shared/contracts/quarantine.ts';
+import type { Notice } from '../../../../shared/contracts/notices.ts';
 import { http } from '../../lib/http.ts';
 
 /** Integrity notices that nobody has closed yet. */

@@ -18,7 +18,8 @@ export type ProbeFilters = Partial<Pick<ProbesQuery, 'q' | 'siteId' | 'kind' | '
 
 /** Enough for several screens; the next page is asked for before the end is reached. */
 const PAGE = 100;
-const EVENTS = 40;
+/** As many as stand beside the charts. */
+const EVENTS = 12;
 
 export const probesList = (filters: ProbeFilters) =>
   infiniteQueryOptions({

@@ -93,6 +93,16 @@ export function traceState(row: LiveRow): 'plain' | 'stop' | 'held' | 'gone' {
   return needsPersonNow(row) ? 'stop' : 'plain';
 }
 
+type TracePoint = [t: number, valueUsCm: number | null];
+
+/** The trace up to now; where somebody works, up to when that began: what came after is no process. */
+export function tracePoints(row: LiveRow, reading: ReadingNow | null): TracePoint[] {
+  const { hold } = row;
+  if (hold) return row.trace.filter(([t]) => t <= Date.parse(hold.fromAt));
+  if (row.trust.level === 'no-signal' || !reading) return row.trace;
+  return [...row.trace, [Date.parse(reading.at), reading.valueUsCm]];
+}
+
 /** `two-electrode · sk-11`, or that there is none. */
 export function probeNote(row: LiveRow): string {
   return row.probe ? `${PROBE_KIND_LABELS[row.probe.kind]} · ${row.probe.tag}` : 'no probe installed';

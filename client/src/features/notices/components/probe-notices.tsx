@@ -1,6 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
-import type { Notice } from '../../../../../shared/contracts/quarantine.ts';
+import type { Notice } from '../../../../../shared/contracts/notices.ts';
 import { formatDateTime } from '../../../../../shared/format/dates.ts';
 import { capitalise, NOTICE_LABELS } from '../../../../../shared/format/labels.ts';
 import { Button } from '../../../components/ui/button.tsx';

@@ -15,6 +15,7 @@ import {
   quantityOf,
   readingNow,
   stripInput,
+  tracePoints,
   traceState,
   valueState,
 } from '../live-row.ts';
@@ -68,11 +69,9 @@ export function LiveAge({ row }: { row: LiveRow }) {
 export function LiveTrace({ row }: { row: LiveRow }) {
   const latest = useLatestReading(row.probe?.id);
   const now = useServerNow();
-  const reading = readingNow(row, latest);
-  const end: [number, number | null][] = reading ? [[Date.parse(reading.at), reading.valueUsCm]] : [];
   return (
     <Trace
-      points={row.trust.level === 'no-signal' ? row.trace : [...row.trace, ...end]}
+      points={tracePoints(row, readingNow(row, latest))}
       from={now - TRACE_MS}
       to={now}
       state={traceState(row)}
