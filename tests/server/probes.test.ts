@@ -3,7 +3,7 @@ import {
   Assignment,
   CellConstant,
   Device,
-  Probe,
+  type Probe,
   ProbeEvent,
   type Point,
   type Site,

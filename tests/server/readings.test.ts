@@ -68,7 +68,7 @@ beforeAll(async () => {
 });
 afterAll(() => app.stop());
 beforeEach(() => {
-  app.clock.set(noon);
+  app.clock.set(new Date(noon));
 });
 
 async function board(query = ''): Promise<LiveBoard> {

@@ -15,6 +15,7 @@ import {
 import { route, type AnyRoute } from '../../http/route.ts';
 import * as placements from './placements.ts';
 import { presentProbe, presentProbeRow, presentTimelineRow } from './presenter.ts';
+import * as registration from './registration.ts';
 import * as probes from './service.ts';
 
 export const probeRoutes: AnyRoute[] = [
@@ -39,7 +40,7 @@ export const probeRoutes: AnyRoute[] = [
     answer: probe,
     status: 201,
     run: async ({ parts, actor, body }) =>
-      presentProbe(await probes.registerProbe(parts, actor, body), actor),
+      presentProbe(await registration.registerProbe(parts, actor, body), actor),
   }),
   route({
     verb: 'get',
@@ -60,7 +61,7 @@ export const probeRoutes: AnyRoute[] = [
     body: changeProbe,
     answer: probe,
     run: async ({ parts, actor, params, body }) =>
-      presentProbe(await probes.changeProbe(parts, actor, params.id, body), actor),
+      presentProbe(await registration.changeProbe(parts, actor, params.id, body), actor),
   }),
   route({
     verb: 'post',

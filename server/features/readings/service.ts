@@ -49,12 +49,16 @@ export async function comparisonsOf(
 }
 
 /** The verdict on each of the probes, wherever they stand, by a fixed number of queries. */
-export async function judgeProbes(parts: Parts, probeIds: readonly number[]): Promise<Map<number, Verdict>> {
+export async function judgeProbes(
+  parts: Parts,
+  probeIds: readonly number[],
+  perProbe: number = comparisonsShown,
+): Promise<Map<number, Verdict>> {
   if (probeIds.length === 0) return new Map();
   const now = parts.clock.now();
   const [rows, comparisons, rules] = await Promise.all([
     selectStandingProbes(parts, probeIds, now),
-    comparisonsOf(parts, probeIds, comparisonsShown),
+    comparisonsOf(parts, probeIds, perProbe),
     readVerdictRules(),
   ]);
   return new Map(
