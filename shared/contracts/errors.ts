@@ -41,7 +41,6 @@ export const errorCodes = define({
     'invalid',
     'The list cursor is not one this server gave out. Start the list again without it.',
   ],
-  'request.too-many': ['too-many', 'Too many requests from here. Wait a minute and try again.'],
 
   'sessions.required': ['unauthenticated', 'Sign in first.'],
   'sessions.credentials-wrong': [
@@ -83,7 +82,6 @@ export const errorCodes = define({
 
   'memberships.not-found': ['not-found', 'No such grant.'],
   'memberships.exists': ['conflict', 'This person already has a role there. End it first, or change it.'],
-  'memberships.auditor-needs-end': ['invalid', 'An auditor’s grant needs the day it ends.'],
   'memberships.forbidden': ['forbidden', 'Only an administrator of that site grants or ends roles there.'],
 
   'sites.not-found': ['not-found', 'No such site, or not one you may see.'],
@@ -157,7 +155,6 @@ export const errorCodes = define({
     'Somebody changed this setting meanwhile. Reload and repeat your change.',
   ],
   'mails.forbidden': ['forbidden', 'Only an administrator reads the mail outbox.'],
-  'mails.not-found': ['not-found', 'No such mail.'],
 
   'procedures.not-found': ['not-found', 'No such procedure, or none that applies to this probe.'],
   'procedures.forbidden': ['forbidden', 'Only a manager or an administrator edits procedures.'],

@@ -50,6 +50,7 @@ const SIGNIFICANT_RATIO = 2;
 
 /**
  * Whether a rate differs from 0 by more than its uncertainty explains: |b| > 2 u(b).
+ * @returns true beyond two standard uncertainties. Source: bench-practice (about 95 %).
  * @example isBeyondNoise({ ratePerDay: 0.005, standardUncertainty: 0.002 }) // true
  */
 export const isBeyondNoise = ({ ratePerDay, standardUncertainty }: DriftStep): boolean =>
@@ -86,6 +87,7 @@ export function driftStep(segment: DriftSegment): DriftStep {
 
 /**
  * Mean weighted by 1/u², its uncertainty from the stated ones alone, and the misfit about it. At least one step, each u above 0.
+ * @returns mean and its standard uncertainty in the unit of the rates, chi-square of the misfit. Source: bevington eq. 4.17.
  * @example combineSteps([{ ratePerDay: 1, standardUncertainty: 1 }, { ratePerDay: 4, standardUncertainty: 2 }]).mean // ≈ 1.6
  */
 export function combineSteps(steps: readonly DriftStep[]): {

@@ -1,4 +1,4 @@
-import type { Notice as View } from '../../../shared/contracts/quarantine.ts';
+import type { Notice as View } from '../../../shared/contracts/notices.ts';
 import type { Notice } from '../../db/models/index.ts';
 import type { Actor } from '../../http/actor.ts';
 import { may } from '../../http/authorise.ts';

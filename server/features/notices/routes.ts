@@ -1,5 +1,5 @@
 import { idPath, listOf } from '../../../shared/contracts/common.ts';
-import { closeNotice, notice, noticesQuery } from '../../../shared/contracts/quarantine.ts';
+import { closeNotice, notice, noticesQuery } from '../../../shared/contracts/notices.ts';
 import { route, type AnyRoute } from '../../http/route.ts';
 import { presentNotice } from './presenter.ts';
 import * as notices from './service.ts';

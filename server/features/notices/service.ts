@@ -1,7 +1,7 @@
 /** Integrity notices: something that should not happen and that a person must look at. */
 import { Op, type WhereOptions } from 'sequelize';
 import type { z } from 'zod';
-import type { noticesQuery } from '../../../shared/contracts/quarantine.ts';
+import type { noticesQuery } from '../../../shared/contracts/notices.ts';
 import { AppError } from '../../errors.ts';
 import { Notice } from '../../db/models/index.ts';
 import { inTransaction } from '../../db/transaction.ts';

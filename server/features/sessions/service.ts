@@ -1,5 +1,4 @@
 /** Sign-in, its lock, and the person behind a session. */
-import { deleteOtherSessions } from '../users/queries.ts';
 import type { Welcome } from '../../../shared/contracts/sessions.ts';
 import { AppError } from '../../errors.ts';
 import { Membership, Setting, User } from '../../db/models/index.ts';
@@ -9,6 +8,9 @@ import { hashPassword, verifyPassword } from '../../lib/hashing.ts';
 import type { Parts } from '../../parts.ts';
 import { recordAuditEvent, type OtherActor } from '../audit-events/service.ts';
 import { demoSignIns } from './demo-sign-ins.ts';
+import { deleteOtherSessions } from './queries.ts';
+
+export { deleteOtherSessions };
 
 /** Wrong passwords in a row before the lock, and its length: NIST SP 800-63B §5.2.2 allows up to 100; we are stricter. */
 const wrongBeforeLock = 5;

@@ -16,7 +16,8 @@ import { hashPassword, newSecret, sha256Hex, verifyPassword } from '../../lib/ha
 import { queueMail } from '../../mail/outbox.ts';
 import type { Parts } from '../../parts.ts';
 import { recordAuditEvent } from '../audit-events/service.ts';
-import { deleteOtherSessions, lockFirstPerson } from './queries.ts';
+import { deleteOtherSessions } from '../sessions/service.ts';
+import { lockFirstPerson } from './queries.ts';
 import { userPolicy } from './policy.ts';
 
 const invitationDays = 7;
