@@ -449,7 +449,12 @@ describe('installing, moving, taking out', () => {
       capturedAt: new Date('2026-12-01T09:30:00Z'),
       receivedAt: new Date('2026-12-01T12:00:00Z'),
     });
-    expect(app.events.map(({ slice }) => slice)).toEqual(['probes', 'points', 'readings', 'sites']);
+    expect(app.events.map(({ slice, id, siteId }) => [slice, id, siteId])).toEqual([
+      ['points', free.id, site.id],
+      ['probes', probe.id, site.id],
+      ['readings', probe.id, site.id],
+      ['sites', site.id, site.id],
+    ]);
   });
 
   it('moves to another site at one moment and keeps credentials and history', async () => {
@@ -488,7 +493,10 @@ describe('installing, moving, taking out', () => {
       newValue: { pointId: to.id, siteId: other.id },
       reason: 'replaces a broken one',
     });
-    expect(new Set(app.events.map(({ siteId }) => siteId))).toEqual(new Set([site.id, other.id]));
+    const told = app.events.map(({ slice, id, siteId }) => [slice, id, siteId]);
+    expect(told).toContainEqual(['points', from.id, site.id]);
+    expect(told).toContainEqual(['points', to.id, other.id]);
+    for (const { id } of [site, other]) expect(told).toContainEqual(['probes', probe.id, id]);
     const { body: timeline } = await agent.get(`/api/probes/${probe.id}/events`).expect(200);
     expect(timeline.items.map((one: { kind: string }) => one.kind)).toEqual(['moved', 'check']);
   });

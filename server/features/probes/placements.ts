@@ -57,13 +57,20 @@ async function lockFreePoint(
   return { siteId, code: point.code };
 }
 
-/** A probe's verdict, its point and the board all change with its place; both sites are told. */
-function announce(parts: Parts, probeId: number, siteIds: readonly number[]): void {
-  for (const siteId of new Set(siteIds)) {
-    for (const slice of ['probes', 'points', 'readings', 'sites'] as const) {
-      const id = slice === 'sites' ? siteId : probeId;
-      parts.broadcast.changed({ slice, id, kind: 'changed' }, siteId);
-    }
+interface Place {
+  siteId: number;
+  pointId: number | null;
+}
+
+/** A probe's verdict, the points it left and came to, and the board all change; every site concerned is told. */
+function announce(parts: Parts, probeId: number, places: readonly Place[]): void {
+  const { changed } = parts.broadcast;
+  for (const { siteId, pointId } of places)
+    if (pointId !== null) changed({ slice: 'points', id: pointId, kind: 'changed' }, siteId);
+  for (const siteId of new Set(places.map((place) => place.siteId))) {
+    changed({ slice: 'probes', id: probeId, kind: 'changed' }, siteId);
+    changed({ slice: 'readings', id: probeId, kind: 'changed' }, siteId);
+    changed({ slice: 'sites', id: siteId, kind: 'changed' }, siteId);
   }
 }
 
@@ -106,7 +113,12 @@ export async function installProbe(
         },
         capturedAt: at,
       });
-      transaction.afterCommit(() => announce(parts, id, [before.siteId, point.siteId]));
+      transaction.afterCommit(() =>
+        announce(parts, id, [
+          { siteId: before.siteId, pointId: null },
+          { siteId: point.siteId, pointId: input.pointId },
+        ]),
+      );
     }),
   );
   return readProbe(parts, actor, id);
@@ -188,7 +200,12 @@ export async function moveProbe(
         reason: input.reason,
         capturedAt: at,
       });
-      transaction.afterCommit(() => announce(parts, id, [siteBefore, point.siteId]));
+      transaction.afterCommit(() =>
+        announce(parts, id, [
+          { siteId: siteBefore, pointId: left.pointId },
+          { siteId: point.siteId, pointId: input.pointId },
+        ]),
+      );
     }),
   );
   return readProbe(parts, actor, id);
@@ -224,7 +241,7 @@ export async function removeProbe(
         reason: input.reason,
         capturedAt: at,
       });
-      transaction.afterCommit(() => announce(parts, id, [probe.siteId]));
+      transaction.afterCommit(() => announce(parts, id, [{ siteId: probe.siteId, pointId: left.pointId }]));
     }),
   );
   return readProbe(parts, actor, id);
@@ -264,7 +281,9 @@ export async function retireProbe(
       newValue: { status: 'retired', pointId: null, device: null, retiredAt: at },
       reason,
     });
-    transaction.afterCommit(() => announce(parts, id, [probe.siteId]));
+    transaction.afterCommit(() =>
+      announce(parts, id, [{ siteId: probe.siteId, pointId: left?.pointId ?? null }]),
+    );
   });
   return readProbe(parts, actor, id);
 }
