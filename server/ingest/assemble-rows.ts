@@ -9,7 +9,7 @@ import { type GatheredGroup, type HeardReadings } from './gather-group.ts';
 import { movesOn, type LivePosition } from './live-order.ts';
 import type { NewNotice } from './notices.ts';
 import type { PresencePlan } from './presence.ts';
-import type { Db } from './queries.ts';
+import { lotKey, selectLots, selectPointsAt, type Db } from './queries.ts';
 import type { SessionBook } from './session-book.ts';
 import { judgeAge } from './time-rules.ts';
 import type { NewCheck } from './write-checks.ts';
@@ -118,18 +118,24 @@ export const livePosition = ({ deviceId, boot, reading }: ReadingCandidate): Liv
   atMs: reading.atMs,
 });
 
+/** Lots and places are asked of the database at that very moment: a recall or a move counts from its commit on. */
 async function evaluateChecks(
   fresh: readonly ReadingCandidate[],
-  context: AssembleContext,
+  { db, directory }: AssembleContext,
 ): Promise<NewCheck[]> {
-  const { db, directory } = context;
-  const checks: NewCheck[] = [];
-  for (const row of fresh) {
-    const { reading, probeId, device } = row;
-    if (reading.context !== 'check') continue;
-    const probe = directory.probe(probeId);
-    const point = await directory.pointAt(db, probeId, reading.atMs);
-    const lot = reading.solution === null ? undefined : directory.lot(reading.solution);
+  const inSolution = fresh.filter(({ reading }) => reading.context === 'check');
+  if (inSolution.length === 0) return [];
+  const codes = new Set(inSolution.flatMap(({ reading }) => reading.solution ?? []));
+  const lots = await selectLots(db, [...codes]);
+  const points = await selectPointsAt(
+    db,
+    inSolution.map(({ probeId, reading }) => ({ probeId, atMs: reading.atMs })),
+  );
+  return inSolution.map((row, index) => {
+    const { reading, device } = row;
+    const probe = directory.probe(row.probeId);
+    const point = points[index] ?? null;
+    const lot = reading.solution === null ? undefined : lots.get(lotKey(reading.solution));
     const cellConstantPerCm =
       row.settingsCellConstantPerCm ?? device.reportedCellConstantPerCm ?? probe?.cellConstantPerCm ?? null;
     const result = evaluate({
@@ -140,16 +146,8 @@ async function evaluateChecks(
       cellConstantPerCm,
       uncertainty: directory.uncertainty(),
     });
-    checks.push({
-      row,
-      lot,
-      point,
-      siteId: point?.siteId ?? probe?.siteId ?? null,
-      cellConstantPerCm,
-      result,
-    });
-  }
-  return checks;
+    return { row, lot, point, siteId: point?.siteId ?? probe?.siteId ?? null, cellConstantPerCm, result };
+  });
 }
 
 const bucketMs = 600_000;

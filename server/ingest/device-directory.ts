@@ -1,5 +1,5 @@
 /**
- * Devices, where their probes stand, lots and settings, held in memory and told of every change by the database.
+ * Devices, where their probes stand and the settings, held in memory and told of every change by the database.
  * A device is looked up at each message; asking the database each time would cost more than storing the message.
  */
 import type { Pool } from 'pg';
@@ -9,14 +9,10 @@ import { listenForChanges } from './directory-listener.ts';
 import {
   selectDevice,
   selectDevices,
-  selectLots,
-  selectPlacementAt,
   selectPlacements,
   selectProbes,
   selectSetting,
-  type Db,
   type DeviceRow,
-  type LotRow,
   type PlacementRow,
   type PointRow,
   type ProbeRow,
@@ -27,7 +23,6 @@ export type Device = DeviceRow;
 interface Surroundings {
   probes: Map<number, ProbeRow>;
   placements: Map<number, PlacementRow[]>;
-  lots: Map<string, LotRow>;
   uncertainty: SettingValue<'check-uncertainty'>;
 }
 
@@ -41,14 +36,11 @@ export interface DeviceDirectory {
   refreshDevice: (name: string) => Promise<void>;
   /** Called with a device whose credentials no longer let it in, or have changed. */
   onCredentialsChanged: (listener: (name: string) => void) => void;
-  /** Reads probes, placements, lots and settings again if any was announced as changed. */
+  /** Reads probes, placements and settings again if any was announced as changed. */
   ensureFresh: () => Promise<void>;
   probe: (probeId: number) => ProbeRow | undefined;
   /** Where the probe stands at a moment near now. */
   currentPoint: (probeId: number, atMs: number) => PointRow | null;
-  /** Where the probe stood at any moment. */
-  pointAt: (db: Db, probeId: number, atMs: number) => Promise<PointRow | null>;
-  lot: (code: string) => LotRow | undefined;
   uncertainty: () => SettingValue<'check-uncertainty'>;
   stop: () => Promise<void>;
 }
@@ -56,8 +48,6 @@ export interface DeviceDirectory {
 /** Names asked for in vain are remembered this long, so that a flood of them does not reach the database. */
 const unknownForMs = 5000;
 const maxUnknown = 10_000;
-/** Placements that ended within the last hour are held as well; older moments are asked of the database. */
-const heldPlacementsMs = 3_600_000;
 
 export async function openDeviceDirectory(options: {
   pool: Pool;
@@ -137,12 +127,6 @@ export async function openDeviceDirectory(options: {
     },
     probe: (probeId) => surroundings?.probes.get(probeId),
     currentPoint: (probeId, atMs) => placementAmong(surroundings?.placements.get(probeId), atMs),
-    pointAt: async (db, probeId, atMs) => {
-      const held = placementAmong(surroundings?.placements.get(probeId), atMs);
-      if (held || atMs > nowMs() - heldPlacementsMs) return held;
-      return selectPlacementAt(db, probeId, atMs);
-    },
-    lot: (code) => surroundings?.lots.get(code.trim().toLowerCase()),
     uncertainty: () => surroundings?.uncertainty ?? settingDefaults['check-uncertainty'],
     stop: () => listener.stop(),
   };
@@ -153,10 +137,9 @@ function placementAmong(placements: PlacementRow[] | undefined, atMs: number): P
 }
 
 async function readSurroundings(pool: Pool): Promise<Surroundings> {
-  const [probes, placements, lots, uncertainty] = await Promise.all([
+  const [probes, placements, uncertainty] = await Promise.all([
     selectProbes(pool),
     selectPlacements(pool),
-    selectLots(pool),
     selectSetting(pool, 'check-uncertainty'),
   ]);
   const ofProbe = new Map<number, PlacementRow[]>();
@@ -169,7 +152,6 @@ async function readSurroundings(pool: Pool): Promise<Surroundings> {
   return {
     probes: new Map(probes.map((probe) => [probe.probeId, probe])),
     placements: ofProbe,
-    lots: new Map(lots.map((lot) => [lot.code.toLowerCase(), lot])),
     uncertainty: parsed.success ? parsed.data : settingDefaults['check-uncertainty'],
   };
 }

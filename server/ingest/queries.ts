@@ -69,7 +69,7 @@ export interface PlacementRow extends PointRow {
   toMs: number | null;
 }
 
-/** Where probes stand now or will stand; what is over is looked up when a late check asks for it. */
+/** Where probes stand now or will stand, and the last hour. */
 export async function selectPlacements(db: Db): Promise<PlacementRow[]> {
   const { rows } = await db.query<PlacementRow>(`
     select s.probe_id as "probeId", (extract(epoch from s.from_at) * 1000)::float8 as "fromMs",
@@ -79,15 +79,21 @@ export async function selectPlacements(db: Db): Promise<PlacementRow[]> {
   return rows;
 }
 
-export async function selectPlacementAt(db: Db, probeId: number, atMs: number): Promise<PointRow | null> {
-  const { rows } = await db.query<PointRow>(
-    `select ${pointColumns}
-     from assignments s join points p on p.id = s.point_id join areas a on a.id = p.area_id
-     where s.probe_id = $1 and s.from_at <= to_timestamp($2::float8 / 1000)
-       and (s.to_at is null or s.to_at > to_timestamp($2::float8 / 1000))`,
-    [probeId, atMs],
+/** Where each probe stood at a moment of its own, in the order asked. */
+export async function selectPointsAt(
+  db: Db,
+  asked: readonly { probeId: number; atMs: number }[],
+): Promise<(PointRow | null)[]> {
+  const { rows } = await db.query<PointRow & { place: number }>(
+    `select k.place::int, ${pointColumns}
+     from unnest($1::int[], $2::float8[]) with ordinality as k (probe_id, at_ms, place)
+     join assignments s on s.probe_id = k.probe_id and s.from_at <= to_timestamp(k.at_ms / 1000)
+       and (s.to_at is null or s.to_at > to_timestamp(k.at_ms / 1000))
+     join points p on p.id = s.point_id join areas a on a.id = p.area_id`,
+    [numberColumn(asked.map(({ probeId }) => probeId)), numberColumn(asked.map(({ atMs }) => atMs))],
   );
-  return rows[0] ?? null;
+  const found = new Map(rows.map((row) => [row.place, row]));
+  return asked.map((_, index) => found.get(index + 1) ?? null);
 }
 
 export interface LotRow {
@@ -105,15 +111,20 @@ export interface LotRow {
   state: 'released' | 'quarantined' | 'recalled';
 }
 
-export async function selectLots(db: Db): Promise<LotRow[]> {
-  const { rows } = await db.query<LotRow>(`
-    select id, code, medium, basis, nominal, certified_conductivity_us_cm as "certifiedConductivityUsCm",
-      reference_temperature_c as "referenceTemperatureC", expanded_uncertainty_us_cm as "expandedUncertaintyUsCm",
-      coverage_factor as "coverageFactor", temperature_table as "temperatureTable",
-      to_char(expires_on, 'YYYY-MM-DD') as "expiresOn", state
-    from standards`);
-  return rows;
+/** Lots by the codes that devices gave, without regard to case. */
+export async function selectLots(db: Db, codes: readonly string[]): Promise<Map<string, LotRow>> {
+  const { rows } = await db.query<LotRow>(
+    `select id, code, medium, basis, nominal, certified_conductivity_us_cm as "certifiedConductivityUsCm",
+       reference_temperature_c as "referenceTemperatureC", expanded_uncertainty_us_cm as "expandedUncertaintyUsCm",
+       coverage_factor as "coverageFactor", temperature_table as "temperatureTable",
+       to_char(expires_on, 'YYYY-MM-DD') as "expiresOn", state
+     from standards where lower(code) = any($1::text[])`,
+    [textColumn(codes.map(lotKey))],
+  );
+  return new Map(rows.map((row) => [lotKey(row.code), row]));
 }
+
+export const lotKey = (code: string): string => code.trim().toLowerCase();
 
 export async function selectSetting(db: Db, key: string): Promise<unknown> {
   const { rows } = await db.query<{ value: unknown }>('select value from settings where key = $1', [key]);

@@ -1,4 +1,3 @@
-import { once } from 'node:events';
 import { connect, connectAsync, type MqttClient } from 'mqtt';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { Device } from '../../server/db/models/index.ts';
@@ -183,7 +182,9 @@ describe('what a device may hear', () => {
       password: secret,
       clean: false,
     });
-    const [connack] = (await once(again, 'connect')) as [{ sessionPresent: boolean }];
+    const connack = await new Promise<{ sessionPresent: boolean }>((resolve) =>
+      again.once('connect', resolve),
+    );
     await again.endAsync();
     expect(connack.sessionPresent).toBe(false);
   });

@@ -1,11 +1,10 @@
 /** Ingest running on a database of its own, with probes whose devices connect over real sockets. */
-import { once } from 'node:events';
 import { connectAsync, type IClientOptions, type MqttClient } from 'mqtt';
 import pg from 'pg';
 import type { Sequelize } from 'sequelize';
 import { vi } from 'vitest';
 import { topicOf, type TopicKind } from '../../shared/contracts/mqtt.ts';
-import type { LivePoint } from '../../shared/contracts/realtime.ts';
+import type { Changed, LivePoint } from '../../shared/contracts/realtime.ts';
 import { readConfig } from '../../server/config.ts';
 import { User, type Device, type Point, type Probe, type Site } from '../../server/db/models/index.ts';
 import { connectDatabase } from '../../server/db/sequelize.ts';
@@ -80,7 +79,7 @@ export async function startPlant({ limits, environment }: PlantOptions = {}): Pr
   const points: SentPoint[] = [];
   const broadcast = {
     ...createBroadcast(null),
-    changed: (update: SentUpdate, siteId: number | null) => void events.push({ ...update, siteId }),
+    changed: (update: Changed, siteId: number | null) => void events.push({ ...update, siteId }),
     readings: (probeId: number, siteId: number | null, point: LivePoint) =>
       void points.push({ ...point, probeId, siteId }),
   } satisfies Parts['broadcast'];
@@ -134,6 +133,8 @@ export async function startPlant({ limits, environment }: PlantOptions = {}): Pr
         connectTimeout: 5000,
         ...options,
       });
+      // A refused reconnection is told here; without a listener it would end the test run.
+      client.on('error', () => {});
       clients.push(client);
       return client;
     },
@@ -234,5 +235,8 @@ export const publish = async (
 export const eventually = <T>(look: () => T | Promise<T>, timeout = 10_000): Promise<T> =>
   vi.waitFor(look, { timeout, interval: 20 });
 
-export const closed = (client: MqttClient): Promise<unknown> =>
-  client.connected ? once(client, 'close') : Promise.resolve();
+export const closed = (client: MqttClient): Promise<void> =>
+  new Promise((resolve) => {
+    if (!client.connected) return resolve();
+    client.once('close', () => resolve());
+  });

@@ -3,6 +3,7 @@ import type { MqttClient } from 'mqtt';
 import {
   aBirth,
   aMessage,
+  closed,
   aReading,
   at,
   eventually,
@@ -157,7 +158,7 @@ it('one message that the database refuses leaves the others of its group alone',
 });
 
 it('a packet far beyond any message is not even read', async () => {
-  const ended = new Promise((resolve) => client.once('close', resolve));
+  const ended = closed(client);
   client.publish(`saltmark/1/${station.name}/readings`, Buffer.alloc(3_000_000), { qos: 1 }, () => {});
   await ended;
   expect(await quarantined()).toEqual([]);

@@ -1,10 +1,10 @@
 import type { Migration } from './migration.ts';
 
-// Ingest keeps devices, placements, points, lots and settings in memory, because a look-up per reading would
-// cost more than storing it. These triggers tell every ingest process at commit what has changed, whoever
-// changed it, so that a revoked credential or a recalled lot counts at once. A device is named; for the
-// rest the table is enough, they are small and rarely written. What ingest itself writes to devices
-// (presence, last seen) is left out.
+// Ingest keeps devices, placements, points and settings in memory, because a look-up per reading would cost
+// more than storing it. These triggers tell every ingest process at commit what has changed, whoever changed
+// it, so that a revoked credential or a moved probe counts at once. A device is named; for the rest the table
+// is enough, they are small and rarely written. What ingest itself writes to devices (presence, last seen) is
+// left out.
 export const announceDirectoryChanges: Migration = {
   name: '20261201091700-announce-directory-changes',
   up: `
@@ -35,14 +35,11 @@ export const announceDirectoryChanges: Migration = {
       for each statement execute function announce_table_change();
     create trigger points_announce after insert or update or delete on points
       for each statement execute function announce_table_change();
-    create trigger standards_announce after insert or update or delete on standards
-      for each statement execute function announce_table_change();
     create trigger settings_announce after insert or update or delete on settings
       for each statement execute function announce_table_change();
   `,
   down: `
     drop trigger settings_announce on settings;
-    drop trigger standards_announce on standards;
     drop trigger points_announce on points;
     drop trigger assignments_announce on assignments;
     drop trigger probes_announce on probes;
