@@ -18,11 +18,16 @@ const shellPages: readonly [address: { pattern: string }, element: React.ReactNo
   [paths.probes, page(() => import('./routes/probes-page.tsx'))],
   [paths.newProbe, page(() => import('./routes/new-probe-page.tsx'))],
   [paths.probe, page(() => import('./routes/probe-page.tsx'))],
-  [paths.probes, page(() => import('./routes/probes-page.tsx'))],
-  [paths.newProbe, page(() => import('./routes/new-probe-page.tsx'))],
   [paths.points, page(() => import('./routes/points-page.tsx'))],
   [paths.point, page(() => import('./routes/point-page.tsx'))],
   [paths.newPoint, page(() => import('./routes/new-point-page.tsx'))],
+  [paths.settings, page(() => import('./routes/settings-page.tsx'))],
+  [paths.sites, page(() => import('./routes/sites-page.tsx'))],
+  [paths.newSite, page(() => import('./routes/new-site-page.tsx'))],
+  [paths.site, page(() => import('./routes/site-page.tsx'))],
+  [paths.people, page(() => import('./routes/people-page.tsx'))],
+  [paths.newPerson, page(() => import('./routes/new-person-page.tsx'))],
+  [paths.person, page(() => import('./routes/person-page.tsx'))],
   [paths.account, page(() => import('./routes/account-page.tsx'))],
 ];
 
