@@ -1,47 +1,33 @@
 import { useQuery } from '@tanstack/react-query';
-import { useCallback, useMemo } from 'react';
-import { useSearchParams } from 'react-router-dom';
+import { AreaTabs } from '../components/layout/area-tabs.tsx';
 import { ButtonLink } from '../components/ui/button.tsx';
 import { ProbeList } from '../features/probes/components/probe-list.tsx';
-import { filtersFrom } from '../features/probes/filters.ts';
 import { useSession } from '../features/sessions/session-context.ts';
 import { sitesList } from '../features/sites/api.ts';
 import { useShowSite } from '../features/sites/site-in-view.ts';
+import { idOf, useAddressFilters } from '../lib/use-address-filters.ts';
 import { paths } from '../paths.ts';
+import { probeTabs } from './area-pages.ts';
 
-/** The list of probes; its filters stand in the address, so that a view can be sent to somebody. */
+/** All probes of the sites one may see. */
 export default function ProbesPage() {
-  const [params, setParams] = useSearchParams();
-  const filters = useMemo(() => filtersFrom(params), [params]);
-  const sites = useQuery(sitesList()).data?.items ?? [];
   const { can } = useSession();
-  useShowSite(filters.siteId ?? null);
-  const setFilter = useCallback(
-    (name: string, value: string) =>
-      setParams(
-        (before) => {
-          const after = new URLSearchParams(before);
-          if (value) after.set(name, value);
-          else after.delete(name);
-          return after;
-        },
-        { replace: true },
-      ),
-    [setParams],
-  );
+  const siteId = idOf(useAddressFilters().read('siteId')) ?? null;
+  const sites = useQuery(sitesList()).data?.items ?? [];
+  useShowSite(siteId);
   return (
-    <ProbeList
-      filters={filters}
-      sites={sites}
-      onFilter={setFilter}
-      onClear={() => setParams({}, { replace: true })}
-      register={
-        can.registerProbe ? (
-          <ButtonLink kind="primary" to={paths.newProbe.to({ siteId: filters.siteId })}>
-            Register a probe
-          </ButtonLink>
-        ) : null
-      }
-    />
+    <>
+      <AreaTabs label="Probes and points" items={probeTabs} />
+      <ProbeList
+        sites={sites}
+        registerLink={
+          can.registerProbe ? (
+            <ButtonLink kind="primary" to={paths.newProbe.to({ siteId })}>
+              Register a probe
+            </ButtonLink>
+          ) : null
+        }
+      />
+    </>
   );
 }

@@ -163,7 +163,3 @@ export function runWords(events: readonly ProbeEvent[]): string {
   const high = formatSigned(Math.max(...errors), 2, '%');
   return `${events.length} automatic checks, all within, clear: ${low} to ${high}`;
 }
-
-/** Nobody has to act on it: somebody has the point, or the probe is away from its process. */
-export const isTrustQuiet = (trust: ProbeRow['trust']): boolean =>
-  trust.reason === 'held' || trust.reason === 'not-in-process';
