@@ -1,5 +1,6 @@
 import type { ReactNode } from 'react';
 import { useState } from 'react';
+import type { CheckStage } from '../../../../shared/contracts/vocabulary.ts';
 import { formatDate, formatDay } from '../../../../shared/format/dates.ts';
 import { capitalise, STAGE_LABELS } from '../../../../shared/format/labels.ts';
 import { formatNumber, MINUS } from '../../../../shared/format/numbers.ts';
@@ -32,7 +33,7 @@ export function CellConstantChart(props: CellConstantChartProps) {
           <Drawing geometry={cellConstantGeometry(props, width)} {...props} />
         )}
       </div>
-      {isTable ? null : <ChartKey />}
+      {isTable ? null : <ChartKey {...props} />}
     </figure>
   );
 }
@@ -226,17 +227,20 @@ function Axes({ g, tolerancePercent }: { g: CellConstantGeometry; tolerancePerce
   );
 }
 
-const KEY: readonly [ReactNode, string][] = [
+/** Each shape with its words, and whether it is drawn at all. */
+const KEY: readonly [ReactNode, string, (input: CellConstantInput) => boolean][] = [
   [
     <>
       <path d="M13 0V14" stroke="var(--ink)" strokeWidth="1.4" />
       <circle cx="13" cy="7" r="4.5" fill="var(--ink)" />
     </>,
     'determined, cleaned, with U',
+    hasStage('as-found-cleaned'),
   ],
   [
     <rect x="9" y="3" width="8" height="8" fill="var(--sheet)" stroke="var(--ink)" strokeWidth="1.5" />,
     'as found, uncleaned',
+    hasStage('as-found'),
   ],
   [
     <>
@@ -244,16 +248,25 @@ const KEY: readonly [ReactNode, string][] = [
       <circle cx="13" cy="7" r="6.2" fill="none" stroke="var(--ink)" strokeWidth="1.25" />
     </>,
     'as left',
+    hasStage('as-left'),
   ],
-  [<circle cx="13" cy="7" r={SMALL_DOT} fill="var(--ink)" />, 'automatic check'],
-  [<path d="M4 11H13V3H22" fill="none" stroke="var(--ink)" strokeWidth="2" />, 'constant in use'],
-  [<path d="M1 9L25 1V13L1 11Z" fill="var(--kelp)" opacity=".35" />, 'forecast, 50 · 80 · 95 %'],
+  [<circle cx="13" cy="7" r={SMALL_DOT} fill="var(--ink)" />, 'automatic check', hasStage('automatic')],
+  [<path d="M4 11H13V3H22" fill="none" stroke="var(--ink)" strokeWidth="2" />, 'constant in use', () => true],
+  [
+    <path d="M1 9L25 1V13L1 11Z" fill="var(--kelp)" opacity=".35" />,
+    'forecast, 50 · 80 · 95 %',
+    ({ forecast = [] }) => forecast.length > 0,
+  ],
 ];
 
-function ChartKey() {
+function hasStage(stage: CheckStage) {
+  return ({ points }: CellConstantInput) => points.some((point) => point.stage === stage);
+}
+
+function ChartKey(input: CellConstantInput) {
   return (
     <ul className="chart-key" aria-label="Key">
-      {KEY.map(([shape, words]) => (
+      {KEY.filter(([, , isDrawn]) => isDrawn(input)).map(([shape, words]) => (
         <li key={words}>
           <svg width="26" height="14" viewBox="0 0 26 14" aria-hidden="true">
             {shape}

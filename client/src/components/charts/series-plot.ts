@@ -1,4 +1,4 @@
-import type { ChartDataset, Plugin } from 'chart.js';
+import type { ChartDataset, ChartOptions, Plugin } from 'chart.js';
 import { Chart, Filler, LinearScale, LineController, LineElement, PointElement } from 'chart.js';
 import { formatNumber } from '../../../../shared/format/numbers.ts';
 import type { ChartColours } from './chart-colours.ts';
@@ -25,47 +25,51 @@ export interface SeriesPlot {
   /** Time at a horizontal place, px from the left of the canvas. */
   timeAt: (x: number) => number;
   xAt: (t: number) => number;
-  destroy: () => void;
 }
 
-type Data = { x: number; y: number };
-type Line = ChartDataset<'line', Data[]>;
+export type SeriesPoint = { x: number; y: number };
+type Line = ChartDataset<'line', SeriesPoint[]>;
 
 const FONT = { family: "'Roboto Mono', monospace", size: 12 };
 /** Room for one time label, px. */
 const LABEL_WIDTH = 110;
 
-/** A line with its bands on a canvas. Data sets are replaced in place and redrawn without animation. */
-export function createSeriesPlot(canvas: HTMLCanvasElement): SeriesPlot {
-  let colours = readChartColours(canvas);
-  let state: SeriesPlotState = { points: [], from: 0, to: 1, limits: [], timeZone: 'UTC' };
-  const limitLines: Plugin<'line'> = {
-    id: 'limit-lines',
-    afterDatasetsDraw: (chart) => drawLimits(chart, state.limits, colours),
-  };
-  const chart = new Chart<'line', Data[]>(canvas, {
-    type: 'line',
-    data: { datasets: [] },
-    plugins: [limitLines],
-    options: {
-      animation: false,
-      responsive: true,
-      maintainAspectRatio: false,
-      parsing: false,
-      normalized: true,
-      events: [],
-      layout: { padding: { top: 8, right: 12 } },
-      scales: {
-        x: { type: 'linear', grid: { drawOnChartArea: false, tickLength: 5 }, ticks: { font: FONT } },
-        y: {
-          type: 'linear',
-          grid: { tickLength: 0 },
-          border: { display: false },
-          ticks: { font: FONT, padding: 10 },
-        },
-      },
+/** What each chart shows now: the limit lines are drawn by a plugin, which is given the chart and nothing else. */
+const shown = new WeakMap<Chart, { state: SeriesPlotState; colours: ChartColours }>();
+
+/** Limits over the plot, as posts of the strip. */
+export const limitLines: Plugin<'line'> = {
+  id: 'limit-lines',
+  afterDatasetsDraw: (chart) => {
+    const now = shown.get(chart);
+    if (now) drawLimits(chart, now.state.limits, now.colours);
+  },
+};
+
+/** Options of one chart; a fresh object for each, because the axes are written into it. */
+export const seriesPlotOptions = (): ChartOptions<'line'> => ({
+  animation: false,
+  responsive: true,
+  maintainAspectRatio: false,
+  parsing: false,
+  normalized: true,
+  events: [],
+  layout: { padding: { top: 8, right: 12 } },
+  scales: {
+    x: { type: 'linear', grid: { drawOnChartArea: false, tickLength: 5 }, ticks: { font: FONT } },
+    y: {
+      type: 'linear',
+      grid: { tickLength: 0 },
+      border: { display: false },
+      ticks: { font: FONT, padding: 10 },
     },
-  });
+  },
+});
+
+/** Draws a line with its bands on a mounted chart. Data sets are replaced in place and redrawn without animation. */
+export function createSeriesPlot(chart: Chart<'line', SeriesPoint[]>): SeriesPlot {
+  let colours = readChartColours(chart.canvas);
+  let state: SeriesPlotState = { points: [], from: 0, to: 1, limits: [], timeZone: 'UTC' };
 
   const applyAxes = () => {
     const { x, y } = chart.options.scales ?? {};
@@ -100,6 +104,7 @@ export function createSeriesPlot(canvas: HTMLCanvasElement): SeriesPlot {
     });
   };
   const redraw = () => {
+    shown.set(chart, { state, colours });
     chart.data.datasets = linesOf(state.points, colours);
     applyAxes();
     chart.update('none');
@@ -115,12 +120,11 @@ export function createSeriesPlot(canvas: HTMLCanvasElement): SeriesPlot {
       redraw();
     },
     recolour: () => {
-      colours = readChartColours(canvas);
+      colours = readChartColours(chart.canvas);
       redraw();
     },
     timeAt: (x) => chart.scales['x']?.getValueForPixel(x) ?? 0,
     xAt: (t) => chart.scales['x']?.getPixelForValue(t) ?? 0,
-    destroy: () => chart.destroy(),
   };
 }
 
@@ -128,9 +132,9 @@ const labelAt = (ticks: readonly { t: number; text: string }[]) => (value: numbe
   ticks.find((tick) => tick.t === Number(value))?.text ?? '';
 
 function linesOf(points: readonly SeriesDatum[], colours: ChartColours): Line[] {
-  const line = (value: (point: SeriesDatum) => number | null): Data[] =>
+  const line = (value: (point: SeriesDatum) => number | null): SeriesPoint[] =>
     points.map((point) => ({ x: point.t, y: value(point) ?? Number.NaN }));
-  const band = (upper: Data[], lower: Data[], fill: string): Line[] => [
+  const band = (upper: SeriesPoint[], lower: SeriesPoint[], fill: string): Line[] => [
     { data: upper, borderWidth: 0, pointRadius: 0 },
     { data: lower, borderWidth: 0, pointRadius: 0, fill: '-1', backgroundColor: fill },
   ];

@@ -1,5 +1,7 @@
+import type { Chart } from 'chart.js';
 import type { CSSProperties } from 'react';
 import { useEffect, useMemo, useRef, useState } from 'react';
+import { Line } from 'react-chartjs-2';
 import { formatDateTime } from '../../../../shared/format/dates.ts';
 import { formatNumber } from '../../../../shared/format/numbers.ts';
 import { useTheme } from '../../lib/theme.ts';
@@ -8,8 +10,8 @@ import type { RangeChoice } from './range-buttons.tsx';
 import { RangeButtons } from './range-buttons.tsx';
 import type { SeriesDatum, SeriesLimit } from './series-model.ts';
 import { nearestDatum, newerThan, seriesWords } from './series-model.ts';
-import type { SeriesPlot } from './series-plot.ts';
-import { createSeriesPlot } from './series-plot.ts';
+import type { SeriesPlot, SeriesPoint } from './series-plot.ts';
+import { createSeriesPlot, limitLines, seriesPlotOptions } from './series-plot.ts';
 import { useRangeDrag } from './use-range-drag.ts';
 
 export interface TimeSeriesChartProps {
@@ -36,6 +38,9 @@ export interface TimeSeriesChartProps {
 }
 
 const NONE: readonly never[] = [];
+/** The plot writes its data sets itself, so that live points never pass through props. */
+const NO_DATA: { datasets: { data: SeriesPoint[] }[] } = { datasets: [] };
+const PLUGINS = [limitLines];
 
 /** Readings over time with U or min–max band and limits; range buttons, zoom by dragging, and the values as a table. */
 export function TimeSeriesChart(props: TimeSeriesChartProps) {
@@ -87,7 +92,8 @@ interface SeriesCanvasProps {
 
 function SeriesCanvas(props: SeriesCanvasProps) {
   const { words, unit, decimals, drawn, from, to, limits, timeZone, height, onRangeChange } = props;
-  const canvas = useRef<HTMLCanvasElement>(null);
+  const chart = useRef<Chart<'line', SeriesPoint[]>>(undefined);
+  const options = useMemo(() => seriesPlotOptions(), []);
   const plot = useRef<SeriesPlot | null>(null);
   const [cursor, setCursor] = useState<{ x: number; datum: SeriesDatum } | null>(null);
   const theme = useTheme();
@@ -99,12 +105,10 @@ function SeriesCanvas(props: SeriesCanvasProps) {
   );
 
   useEffect(() => {
-    if (!canvas.current) return undefined;
-    const made = createSeriesPlot(canvas.current);
-    plot.current = made;
+    if (!chart.current) return undefined;
+    plot.current = createSeriesPlot(chart.current);
     return () => {
       plot.current = null;
-      made.destroy();
     };
   }, []);
   useEffect(() => {
@@ -127,7 +131,7 @@ function SeriesCanvas(props: SeriesCanvasProps) {
         }}
         onPointerLeave={() => setCursor(null)}
       >
-        <canvas ref={canvas} role="img" aria-label={words} />
+        <Line ref={chart} data={NO_DATA} options={options} plugins={PLUGINS} aria-label={words} />
         {cursor && !drag ? <span className="chart-cursor" style={{ left: cursor.x }} /> : null}
         {drag ? (
           <span
