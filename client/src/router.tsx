@@ -28,6 +28,9 @@ const shellPages: readonly [address: { pattern: string }, element: React.ReactNo
   [paths.people, page(() => import('./routes/people-page.tsx'))],
   [paths.newPerson, page(() => import('./routes/new-person-page.tsx'))],
   [paths.person, page(() => import('./routes/person-page.tsx'))],
+  [paths.quarantine, page(() => import('./routes/quarantine-page.tsx'))],
+  [paths.quarantinedMessage, page(() => import('./routes/quarantined-message-page.tsx'))],
+  [paths.mail, page(() => import('./routes/mail-page.tsx'))],
   [paths.account, page(() => import('./routes/account-page.tsx'))],
 ];
 
