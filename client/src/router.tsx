@@ -31,6 +31,9 @@ const shellPages: readonly [address: { pattern: string }, element: React.ReactNo
   [paths.quarantine, page(() => import('./routes/quarantine-page.tsx'))],
   [paths.quarantinedMessage, page(() => import('./routes/quarantined-message-page.tsx'))],
   [paths.mail, page(() => import('./routes/mail-page.tsx'))],
+  [paths.organisation, page(() => import('./routes/organisation-page.tsx'))],
+  [paths.auditTrail, page(() => import('./routes/audit-trail-page.tsx'))],
+  [paths.records, page(() => import('./routes/records-page.tsx'))],
   [paths.account, page(() => import('./routes/account-page.tsx'))],
 ];
 

@@ -1,0 +1,83 @@
+/** Events of the trail in words; a code that is not listed is opened, so that nothing is ever hidden. */
+
+/** What was done, as the sentence goes on after the name of the person. */
+export const ACTION_WORDS: Readonly<Record<string, string>> = {
+  'areas.created': 'added the area',
+  'areas.renamed': 'renamed the area',
+  'devices.credentials-issued': 'issued device credentials for',
+  'devices.credentials-replaced': 'replaced the device credentials of',
+  'devices.credentials-revoked': 'withdrew the device credentials of',
+  'memberships.granted': 'gave a role to',
+  'memberships.ended': 'ended a role of',
+  'notices.closed': 'closed the notice',
+  'points.changed': 'changed the point',
+  'points.created': 'added the point',
+  'points.held': 'held the point',
+  'points.released': 'put back into use the point',
+  'points.retired': 'retired the point',
+  'probes.adjusted': 'adjusted the probe',
+  'probes.changed': 'corrected what is recorded about the probe',
+  'probes.installed': 'installed the probe',
+  'probes.moved': 'moved the probe',
+  'probes.note-added': 'wrote a note about the probe',
+  'probes.registered': 'registered the probe',
+  'probes.removed': 'took out the probe',
+  'probes.retired': 'retired the probe',
+  'quarantine.resolved': 'dealt with the message',
+  'sessions.ended-everywhere': 'signed out everywhere',
+  'sessions.sign-in-failed': 'failed to sign in',
+  'sessions.signed-in': 'signed in',
+  'sessions.signed-out': 'signed out',
+  'settings.changed': 'changed the setting',
+  'sites.changed': 'changed the site',
+  'sites.created': 'added the site',
+  'standards.created': 'registered the lot',
+  'standards.state-changed': 'changed the state of the lot',
+  'users.changed': 'changed the person',
+  'users.created': 'added the person',
+  'users.deactivated': 'deactivated the person',
+  'users.first-administrator-created': 'became the first administrator',
+  'users.invited-again': 'mailed a new link to the person',
+  'users.locked': 'was locked out for a time',
+  'users.password-changed': 'changed the password',
+  'users.unlocked': 'unlocked the person',
+};
+
+/** Kinds of things events are about; the filter offers these. */
+export const OBJECT_WORDS: Readonly<Record<string, string>> = {
+  sites: 'site',
+  areas: 'area',
+  points: 'measuring point',
+  probes: 'probe',
+  devices: 'device',
+  standards: 'lot of reference solution',
+  checks: 'comparison',
+  users: 'person',
+  settings: 'setting',
+  quarantine: 'message in quarantine',
+  notices: 'integrity notice',
+};
+
+/** Units by the ending of a field's name, longest first. */
+const UNIT_ENDINGS: readonly [ending: string, unit: string][] = [
+  ['PercentPerK', '%/K'],
+  ['Percent', '%'],
+  ['PerCm', 'cm⁻¹'],
+  ['UsCm', 'µS/cm'],
+  ['Days', 'days'],
+  ['TemperatureC', '°C'],
+  ['UncertaintyC', 'K'],
+];
+
+/** A field's name as people say it, and the unit its name carries: `cellConstantPerCm` → cell constant, cm⁻¹. */
+export function fieldWords(path: string): { name: string; unit: string | null } {
+  const found = UNIT_ENDINGS.find(([ending]) => path.endsWith(ending));
+  const kept = found && found[0].endsWith('C') && found[0] !== 'PerCm' ? path.slice(0, -1) : path;
+  const bare = found && kept === path && found[0] !== 'Days' ? path.slice(0, -found[0].length) : kept;
+  const name = bare
+    .replace(/([a-z0-9])([A-Z])/g, '$1 $2')
+    .replace(/[._-]/g, ' ')
+    .toLowerCase()
+    .trim();
+  return { name: name || path, unit: found?.[1] ?? null };
+}
