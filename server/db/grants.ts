@@ -5,7 +5,16 @@
 import pg, { type Client } from 'pg';
 
 /** History: the server adds rows and reads them, and can never change or take one away. */
-const appendOnlyTables = ['audit_events', 'cell_constants', 'probe_events'];
+const appendOnlyTables = [
+  'audit_events',
+  'cell_constants',
+  'probe_events',
+  'certificates',
+  'calibration_steps',
+  'captures',
+  'capture_exclusions',
+  'signatures',
+];
 
 /** Functions that run with the owner's rights on the server's behalf. */
 const ownerFunctions = ['ensure_reading_partitions(integer, integer)'];

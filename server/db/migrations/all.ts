@@ -18,6 +18,14 @@ import { createAuditEvents } from './20261201091400-create-audit-events.ts';
 import { createSettings } from './20261201091500-create-settings.ts';
 import { createMails } from './20261201091600-create-mails.ts';
 import { announceDirectoryChanges } from './20261201091700-announce-directory-changes.ts';
+import { createProcedures } from './20261208090000-create-procedures.ts';
+import { createCertificates } from './20261208090100-create-certificates.ts';
+import { createBottles } from './20261208090200-create-bottles.ts';
+import { createInstruments } from './20261208090300-create-instruments.ts';
+import { createCalibrations } from './20261208090400-create-calibrations.ts';
+import { createCalibrationEvidence } from './20261208090500-create-calibration-evidence.ts';
+import { createDeviceCommands } from './20261208090600-create-device-commands.ts';
+import { createPrompts } from './20261208090700-create-prompts.ts';
 
 export const migrations: readonly Migration[] = [
   createUsers,
@@ -38,4 +46,12 @@ export const migrations: readonly Migration[] = [
   createSettings,
   createMails,
   announceDirectoryChanges,
+  createProcedures,
+  createCertificates,
+  createBottles,
+  createInstruments,
+  createCalibrations,
+  createCalibrationEvidence,
+  createDeviceCommands,
+  createPrompts,
 ];

@@ -26,6 +26,18 @@ import { Notice, initNotice } from './notice.ts';
 import { AuditEvent, initAuditEvent } from './audit-event.ts';
 import { Setting, initSetting } from './setting.ts';
 import { Mail, initMail } from './mail.ts';
+import { Procedure, initProcedure } from './procedure.ts';
+import { Certificate, initCertificate } from './certificate.ts';
+import { Bottle, initBottle } from './bottle.ts';
+import { Instrument, initInstrument } from './instrument.ts';
+import { Calibration, initCalibration } from './calibration.ts';
+import { CalibrationCounter, initCalibrationCounter } from './calibration-counter.ts';
+import { CalibrationStep, initCalibrationStep } from './calibration-step.ts';
+import { Capture, initCapture } from './capture.ts';
+import { CaptureExclusion, initCaptureExclusion } from './capture-exclusion.ts';
+import { Signature, initSignature } from './signature.ts';
+import { DeviceCommand, initDeviceCommand } from './device-command.ts';
+import { Prompt, initPrompt } from './prompt.ts';
 
 export {
   User,
@@ -54,6 +66,18 @@ export {
   AuditEvent,
   Setting,
   Mail,
+  Procedure,
+  Certificate,
+  Bottle,
+  Instrument,
+  Calibration,
+  CalibrationCounter,
+  CalibrationStep,
+  Capture,
+  CaptureExclusion,
+  Signature,
+  DeviceCommand,
+  Prompt,
 };
 
 const initialisers = [
@@ -83,6 +107,18 @@ const initialisers = [
   initAuditEvent,
   initSetting,
   initMail,
+  initProcedure,
+  initCertificate,
+  initBottle,
+  initInstrument,
+  initCalibration,
+  initCalibrationCounter,
+  initCalibrationStep,
+  initCapture,
+  initCaptureExclusion,
+  initSignature,
+  initDeviceCommand,
+  initPrompt,
 ];
 
 /** Ties all models to `sequelize`, then relates them. */
@@ -94,6 +130,8 @@ export function initModels(sequelize: Sequelize): void {
   relateDevices();
   relateChecks();
   relateNotices();
+  relateReferences();
+  relateCalibrations();
 }
 
 function relatePeople(): void {
@@ -156,4 +194,34 @@ function relateNotices(): void {
   Notice.belongsTo(Probe, { as: 'probe', foreignKey: 'probeId' });
   Notice.belongsTo(User, { as: 'closer', foreignKey: 'closedBy' });
   QuarantinedMessage.belongsTo(User, { as: 'resolver', foreignKey: 'resolvedBy' });
+}
+
+function relateReferences(): void {
+  Standard.hasMany(Bottle, { as: 'bottles', foreignKey: 'standardId' });
+  Bottle.belongsTo(Standard, { as: 'standard', foreignKey: 'standardId' });
+  Bottle.belongsTo(Site, { as: 'site', foreignKey: 'siteId' });
+  Bottle.belongsTo(User, { as: 'opener', foreignKey: 'openedBy' });
+  Certificate.belongsTo(User, { as: 'uploader', foreignKey: 'uploadedBy' });
+}
+
+function relateCalibrations(): void {
+  Calibration.belongsTo(Probe, { as: 'probe', foreignKey: 'probeId' });
+  Calibration.belongsTo(Point, { as: 'point', foreignKey: 'pointId' });
+  Calibration.belongsTo(Site, { as: 'site', foreignKey: 'siteId' });
+  Calibration.belongsTo(Procedure, { as: 'procedure', foreignKey: 'procedureId' });
+  Calibration.belongsTo(Standard, { as: 'standard', foreignKey: 'standardId' });
+  Calibration.belongsTo(Bottle, { as: 'bottle', foreignKey: 'bottleId' });
+  Calibration.belongsTo(Standard, { as: 'secondStandard', foreignKey: 'secondStandardId' });
+  Calibration.belongsTo(Instrument, { as: 'thermometer', foreignKey: 'thermometerId' });
+  Calibration.belongsTo(User, { as: 'performer', foreignKey: 'performerId' });
+  Calibration.hasMany(CalibrationStep, { as: 'steps', foreignKey: 'calibrationId' });
+  Calibration.hasMany(Capture, { as: 'captures', foreignKey: 'calibrationId' });
+  Calibration.hasMany(Signature, { as: 'signatures', foreignKey: 'calibrationId' });
+  CalibrationStep.belongsTo(User, { as: 'user', foreignKey: 'userId' });
+  Capture.hasOne(CaptureExclusion, { as: 'exclusion', foreignKey: 'captureId' });
+  CaptureExclusion.belongsTo(User, { as: 'user', foreignKey: 'userId' });
+  DeviceCommand.belongsTo(Device, { as: 'device', foreignKey: 'deviceId' });
+  Prompt.belongsTo(Probe, { as: 'probe', foreignKey: 'probeId' });
+  Prompt.belongsTo(Point, { as: 'point', foreignKey: 'pointId' });
+  Prompt.belongsTo(Site, { as: 'site', foreignKey: 'siteId' });
 }

@@ -40,7 +40,9 @@ export class Standard extends Model<InferAttributes<Standard>, InferCreationAttr
   declare stateReason: string | null;
   declare stateChangedAt: Date | null;
   declare createdAt: CreationOptional<Date>;
+  declare openedLifeDays: number | null;
   declare version: CreationOptional<number>;
+  declare certificateId: number | null;
 
   declare checks?: NonAttribute<Check[]>;
 }
@@ -68,7 +70,9 @@ export function initStandard(sequelize: Sequelize): void {
       stateReason: DataTypes.TEXT,
       stateChangedAt: DataTypes.DATE,
       createdAt: DataTypes.DATE,
+      openedLifeDays: DataTypes.INTEGER,
       version: versionColumn(),
+      certificateId: DataTypes.INTEGER,
     },
     { ...tableOptions(sequelize, 'standards'), version: true },
   );

@@ -77,6 +77,15 @@ describe('the rest of the database', () => {
     expect(rows).toEqual([{ word: 'brine' }]);
   });
 
+  it.each(['certificates', 'calibration_steps', 'captures', 'capture_exclusions', 'signatures'])(
+    'keeps every row of %s, whoever asks',
+    async (table) => {
+      await expect(application.query(`delete from ${table}`)).rejects.toThrow('permission denied');
+      await expect(application.query(`truncate ${table}`)).rejects.toThrow('permission denied');
+      await expect(owner.query(`delete from ${table}`)).rejects.toThrow('append-only');
+    },
+  );
+
   it.each(['cell_constants', 'probe_events'])(
     'lets the application add to %s, never change it',
     async (table) => {

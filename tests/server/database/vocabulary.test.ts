@@ -51,6 +51,19 @@ it.each([
   ['checks.outcome', words.outcomes],
   ['quarantined_messages.code', words.quarantineCodes],
   ['notices.kind', words.noticeKinds],
+  ['procedures.probe_kinds', words.probeKinds],
+  ['procedures.steps', words.runSteps],
+  ['instruments.kind', words.instrumentKinds],
+  ['instruments.state', words.instrumentStates],
+  ['calibrations.status', words.calibrationStatuses],
+  ['calibrations.decision_rule', words.decisionRules],
+  ['calibration_steps.step', words.runSteps],
+  ['captures.step', words.captureSteps],
+  ['captures.source', words.captureSources],
+  ['capture_exclusions.code', words.exclusionCodes],
+  ['signatures.meaning', words.signatureMeanings],
+  ['device_commands.state', words.commandStates],
+  ['prompts.kind', words.promptKinds],
 ] as const)('%s takes exactly the words of the trade', (column, list) => {
   const inDatabase = [...(checks.get(column) ?? '').matchAll(/'([^']+)'::text/g)].map((match) => match[1]!);
   expect(inDatabase.toSorted()).toEqual([...list].toSorted());
