@@ -12,7 +12,8 @@ export const day = z.iso.date();
 export const line = z
   .string()
   .trim()
-  .regex(/^\P{Cc}*$/u, 'Keep it on one line, without control characters.');
+  // Written out, so that the published pattern means the same to readers without Unicode classes.
+  .regex(/^[^\u0000-\u001f\u007f-\u009f]*$/, 'Keep it on one line, without control characters.');
 /** PostgreSQL text cannot hold the null character. */
 const text = z
   .string()
