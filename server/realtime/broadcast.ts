@@ -6,6 +6,8 @@ export type RealtimeServer = Server<ClientToServer, ServerToClient>;
 
 export const rooms = {
   everyone: 'everyone',
+  /** People with a role at all sites, also those that are still to come. */
+  allSites: 'all-sites',
   site: (id: number) => `site:${id}`,
   siteReadings: (id: number) => `site-readings:${id}`,
   probe: (id: number) => `probe:${id}`,
@@ -47,7 +49,8 @@ export function createBroadcast(io: RealtimeServer | null): Broadcast {
 
   return {
     changed: (update, siteId) => {
-      io?.to(siteId === null ? rooms.everyone : rooms.site(siteId)).emit('changed', update);
+      const to = siteId === null ? [rooms.everyone] : [rooms.site(siteId), rooms.allSites];
+      io?.to(to).emit('changed', update);
     },
     readings: (probeId, siteId, point) => {
       if (!io) return;

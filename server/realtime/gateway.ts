@@ -52,8 +52,7 @@ export function openGateway(io: RealtimeServer, http: HttpServer, parts: Parts, 
   });
   io.on('connection', (socket) => {
     const { actor } = socket.data as { actor: Actor };
-    void socket.join([rooms.everyone, rooms.user(actor.userId)]);
-    joinSites(parts, actor, (names) => void socket.join(names));
+    void socket.join([rooms.everyone, rooms.user(actor.userId), ...siteRooms(actor)]);
     socket.on('watch', (target, answer) => {
       roomOf(parts, actor, target).then(
         async (room) => {
@@ -70,14 +69,7 @@ export function openGateway(io: RealtimeServer, http: HttpServer, parts: Parts, 
   });
 }
 
-function joinSites(parts: Parts, actor: Actor, join: (names: string[]) => void): void {
-  const sites = readableSites(actor);
-  if (sites) return join(sites.map(rooms.site));
-  parts.sequelize.models['Site']!.findAll({ attributes: ['id'] }).then(
-    (all) => join(all.map((site) => rooms.site(site.get('id') as number))),
-    (error: unknown) => parts.log.warn({ err: error }, 'sites of a connection unknown'),
-  );
-}
+const siteRooms = (actor: Actor): string[] => readableSites(actor)?.map(rooms.site) ?? [rooms.allSites];
 
 function plainRoom(target: WatchTarget | undefined): string | null {
   if (target && 'site' in target && Number.isInteger(target.site)) return rooms.siteReadings(target.site);
