@@ -34,6 +34,9 @@ const shellPages: readonly [address: { pattern: string }, element: React.ReactNo
   [paths.organisation, page(() => import('./routes/organisation-page.tsx'))],
   [paths.auditTrail, page(() => import('./routes/audit-trail-page.tsx'))],
   [paths.records, page(() => import('./routes/records-page.tsx'))],
+  [paths.standards, page(() => import('./routes/standards-page.tsx'))],
+  [paths.newStandard, page(() => import('./routes/new-standard-page.tsx'))],
+  [paths.standard, page(() => import('./routes/standard-page.tsx'))],
   [paths.account, page(() => import('./routes/account-page.tsx'))],
 ];
 

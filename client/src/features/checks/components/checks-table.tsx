@@ -19,18 +19,23 @@ import { OutcomeMark } from '../../../components/ui/marks.tsx';
 import { SectionTitle } from '../../../components/ui/page-head.tsx';
 import { probeChecks } from '../api.ts';
 
-const FIRST_ROWS = 12;
+const FIRST_ROWS = 8;
+const MORE_ROWS = 40;
 
 /** Every comparison with a reference solution; those that do not count stand among them with their reason. */
 export function ChecksTable({ probeId, timeZone }: { probeId: number; timeZone: string }) {
   const query = useInfiniteQuery(probeChecks(probeId));
-  const [isWhole, setIsWhole] = useState(false);
+  const [most, setMost] = useState(FIRST_ROWS);
   const all = query.data?.pages.flatMap((page) => page.items) ?? [];
-  const rows = isWhole ? all : all.slice(0, FIRST_ROWS);
+  const rows = all.slice(0, most);
   const total = query.data?.pages[0]?.total ?? 0;
+  const showMore = async () => {
+    setMost(most + MORE_ROWS);
+    if (all.length < most + MORE_ROWS && query.hasNextPage) await query.fetchNextPage();
+  };
   return (
     <section>
-      <SectionTitle note="newest first, those that do not count with their reason">Comparisons</SectionTitle>
+      <SectionTitle note={noteFor(total)}>Comparisons</SectionTitle>
       {query.isPending ? <LoadingFace label="Fetching the comparisons" rows={6} /> : null}
       {query.isError && !query.data ? (
         <FailedFace
@@ -54,13 +59,20 @@ export function ChecksTable({ probeId, timeZone }: { probeId: number; timeZone: 
           }
         />
       ) : null}
-      {rows.length < total && !isWhole ? (
+      {rows.length < total ? (
         <div className="mt-3">
-          <Button onClick={() => setIsWhole(true)}>Show all {formatNumber(total)}</Button>
+          <Button isPending={query.isFetchingNextPage} onClick={showMore}>
+            Show earlier ones
+          </Button>
         </div>
       ) : null}
     </section>
   );
+}
+
+function noteFor(total: number): string {
+  const count = total > 0 ? `${formatNumber(total)} in all, ` : '';
+  return `${count}newest first; those that do not count stand with their reason`;
 }
 
 function columnsFor(timeZone: string): LedgerColumn<Check>[] {
@@ -118,7 +130,7 @@ function StageCell({ check }: { check: Check }) {
   );
 }
 
-function ErrorCell({ check }: { check: Check }) {
+export function ErrorCell({ check }: { check: Check }) {
   if (check.errorPercent === null) return '–';
   const { value, uncertainty } = formatWithUncertainty({
     value: check.errorPercent,
@@ -136,7 +148,7 @@ function ErrorCell({ check }: { check: Check }) {
   );
 }
 
-function OutcomeCell({ check }: { check: Check }) {
+export function OutcomeCell({ check }: { check: Check }) {
   if (check.isValid && check.outcome) return <OutcomeMark outcome={check.outcome} />;
   return (
     <span className="cell-pair">
