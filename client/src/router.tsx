@@ -37,6 +37,7 @@ const shellPages: readonly [address: { pattern: string }, element: React.ReactNo
   [paths.standards, page(() => import('./routes/standards-page.tsx'))],
   [paths.newStandard, page(() => import('./routes/new-standard-page.tsx'))],
   [paths.standard, page(() => import('./routes/standard-page.tsx'))],
+  [paths.calculator, page(() => import('./routes/calculator-page.tsx'))],
   [paths.account, page(() => import('./routes/account-page.tsx'))],
 ];
 
