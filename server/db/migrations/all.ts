@@ -26,6 +26,7 @@ import { createCalibrations } from './20261208090400-create-calibrations.ts';
 import { createCalibrationEvidence } from './20261208090500-create-calibration-evidence.ts';
 import { createDeviceCommands } from './20261208090600-create-device-commands.ts';
 import { createPrompts } from './20261208090700-create-prompts.ts';
+import { announceDeviceCommands } from './20261208090800-announce-device-commands.ts';
 
 export const migrations: readonly Migration[] = [
   createUsers,
@@ -54,4 +55,5 @@ export const migrations: readonly Migration[] = [
   createCalibrationEvidence,
   createDeviceCommands,
   createPrompts,
+  announceDeviceCommands,
 ];

@@ -21,6 +21,7 @@ export class DeviceCommand extends Model<
   declare cellConstantPerCm: number;
   declare state: CommandState;
   declare requestedAt: Date;
+  declare sentAt: Date | null;
   declare answeredAt: Date | null;
   declare detail: string | null;
   declare deviceId: number;
@@ -38,6 +39,7 @@ export function initDeviceCommand(sequelize: Sequelize): void {
       cellConstantPerCm: DataTypes.DOUBLE,
       state: oneOf(commandStates),
       requestedAt: DataTypes.DATE,
+      sentAt: DataTypes.DATE,
       answeredAt: DataTypes.DATE,
       detail: DataTypes.TEXT,
       deviceId: DataTypes.INTEGER,
