@@ -208,7 +208,7 @@ it(
     await Promise.all(senders.map((sender) => sender.stop()));
 
     expect(unanswered()).toBe(0);
-      const stored = await readStored();
+    const stored = await readStored();
     expect(lostOrChanged(stored, (sender) => sender.acknowledged)).toEqual([]);
     expect(stored.size, 'Something is stored that nobody sent.').toBe(acknowledgedSoFar());
     const { rows: notices } = await pool.query(
