@@ -1,13 +1,25 @@
 import type { ReactNode } from 'react';
 import { useEffect, useState } from 'react';
+import { Button, classNames } from './button.tsx';
 import { Field } from './field.tsx';
 import { TextInput } from './text-input.tsx';
 
-/** The filters of a list in one line, above its head. */
-export function Filters({ label, children }: { label: string; children: ReactNode }) {
+export interface FiltersProps {
+  label: string;
+  /** Something narrows the list already: what does must be in sight. */
+  isNarrowed?: boolean;
+  children: ReactNode;
+}
+
+/** The filters of a list in one line, above its head; on a phone all but the search wait behind a button. */
+export function Filters({ label, isNarrowed = false, children }: FiltersProps) {
+  const [isOpen, setIsOpen] = useState(isNarrowed);
   return (
-    <div className="filters" role="search" aria-label={label}>
+    <div className={classNames('filters', isOpen && 'is-open')} role="search" aria-label={label}>
       {children}
+      <Button className="filters-more" aria-expanded={isOpen} onClick={() => setIsOpen(!isOpen)}>
+        {isOpen ? 'Fewer filters' : 'Filters and order'}
+      </Button>
     </div>
   );
 }

@@ -18,9 +18,9 @@ export interface Calculator {
 }
 
 const BASES = [
-  { value: 'molal', label: 'molal, mol/kg' },
-  { value: 'demal', label: 'demal, D' },
-  { value: 'molar', label: 'molar, mol/L' },
+  { value: 'molal', label: 'molal' },
+  { value: 'demal', label: 'demal' },
+  { value: 'molar', label: 'molar' },
 ];
 const NOMINALS = ['0.01', '0.1', '1'].map((value) => ({ value, label: value }));
 const isByLot = (values: Values) => values['by'] === 'lot';
@@ -30,6 +30,7 @@ const SOLUTION: readonly CalculatorField[] = [
   {
     name: 'by',
     label: 'Solution',
+    isWide: true,
     initial: 'basis',
     options: [
       { value: 'basis', label: 'KCl by its basis' },
@@ -42,6 +43,7 @@ const SOLUTION: readonly CalculatorField[] = [
     label: 'Lot',
     initial: '',
     options: 'lots',
+    isWide: true,
     isShown: isByLot,
   },
   {
@@ -201,9 +203,11 @@ export const CALCULATORS: readonly Calculator[] = [
       ...SOLUTION,
       TEMPERATURE,
       { name: 'tolerancePercent', label: 'Tolerance', unit: '%', initial: '3' },
+      { name: 'resolutionUsCm', label: 'Resolution', unit: 'µS/cm', initial: '0' },
       {
         name: 'rule',
         label: 'Decision rule',
+        isWide: true,
         initial: 'guarded-u',
         options: decisionRules.map((value) => ({ value, label: DECISION_RULE_LABELS[value] })),
       },
@@ -221,7 +225,6 @@ export const CALCULATORS: readonly Calculator[] = [
         hint: 'As a standard uncertainty.',
         initial: '0.1',
       },
-      { name: 'resolutionUsCm', label: 'Resolution', unit: 'µS/cm', initial: '0' },
     ],
     body: (values) => ({
       solution: solutionOf(values),

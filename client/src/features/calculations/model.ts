@@ -19,6 +19,8 @@ export interface CalculatorField {
   /** A choice; `lots` are the registered ones. Absent for a number. */
   options?: readonly { value: string; label: string }[] | 'lots';
   isShown?: (values: Values) => boolean;
+  /** Takes the whole width of a phone. */
+  isWide?: boolean;
 }
 
 export const shownFields = (fields: readonly CalculatorField[], values: Values): CalculatorField[] =>

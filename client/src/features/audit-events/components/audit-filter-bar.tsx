@@ -10,6 +10,7 @@ import { ACTION_WORDS, OBJECT_WORDS } from '../words.ts';
 
 export interface AuditFilterBarProps {
   people: readonly { id: number; name: string }[];
+  isNarrowed: boolean;
   read: AddressFilters['read'];
   onChange: AddressFilters['write'];
 }
@@ -17,7 +18,7 @@ export interface AuditFilterBarProps {
 const optionsOf = (words: Readonly<Record<string, string>>): SelectOption[] =>
   Object.entries(words).map(([value, label]) => ({ value, label: capitalise(label) }));
 
-export function AuditFilterBar({ people, read, onChange }: AuditFilterBarProps) {
+export function AuditFilterBar({ people, isNarrowed, read, onChange }: AuditFilterBarProps) {
   const searchObject = useCallback((objectId: string) => onChange({ objectId }), [onChange]);
   const choice = (name: string, label: string, placeholder: string, options: SelectOption[]) => (
     <Field label={label}>
@@ -40,7 +41,7 @@ export function AuditFilterBar({ people, read, onChange }: AuditFilterBarProps) 
   );
   const persons = people.map((person) => ({ value: String(person.id), label: person.name }));
   return (
-    <Filters label="Narrow the audit trail">
+    <Filters label="Narrow the audit trail" isNarrowed={isNarrowed}>
       {choice('objectKind', 'About', 'anything', optionsOf(OBJECT_WORDS))}
       {choice('action', 'What was done', 'anything', optionsOf(ACTION_WORDS))}
       {people.length > 0 ? choice('actorId', 'By', 'anybody', persons) : null}

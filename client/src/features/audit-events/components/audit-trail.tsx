@@ -47,7 +47,7 @@ export function AuditTrail({ people }: AuditTrailProps) {
         }
       />
       <IntegrityCheck />
-      <AuditFilterBar people={people} read={read} onChange={write} />
+      <AuditFilterBar people={people} isNarrowed={isNarrowed} read={read} onChange={write} />
       {query.isPending ? <LoadingFace label="Fetching the audit trail" rows={10} /> : null}
       {query.isError ? (
         <FailedFace

@@ -27,7 +27,7 @@ export function CalculatorInputs({ fields, values, lots, onChange, issueFor }: C
           label={field.label}
           hint={field.hint}
           error={fault(field, values) ?? issueFor(field.path ?? field.name)}
-          className={field.options ? 'is-wide' : undefined}
+          className={field.isWide ? 'is-wide' : undefined}
         >
           <Input field={field} text={values[field.name] ?? ''} lots={lots} onChange={onChange} />
         </Field>

@@ -53,7 +53,7 @@ export function PointList({ sites, addLink }: PointListProps) {
         }
         aside={addLink}
       />
-      <Filters label="Narrow the list of measuring points">
+      <Filters label="Narrow the list of measuring points" isNarrowed={Object.keys(filters).length > 0}>
         <SearchField
           label="Find a point"
           placeholder="name, code, area or probe"

@@ -7,7 +7,7 @@ import type { SelectOption } from '../../../components/ui/select.tsx';
 import { optionsFrom, Select } from '../../../components/ui/select.tsx';
 import type { AddressFilters } from '../../../lib/use-address-filters.ts';
 import type { ProbeFilters } from '../api.ts';
-import { PROBE_SORTS } from '../list-model.ts';
+import { isNarrowed, PROBE_SORTS } from '../list-model.ts';
 
 export interface ProbeListFiltersProps {
   sites: readonly { id: number; name: string }[];
@@ -29,7 +29,7 @@ export function ProbeListFilters({ sites, filters, onChange }: ProbeListFiltersP
   );
   const siteOptions = sites.map((site) => ({ value: String(site.id), label: site.name }));
   return (
-    <Filters label="Narrow the list of probes">
+    <Filters label="Narrow the list of probes" isNarrowed={isNarrowed(filters)}>
       <SearchField
         label="Find a probe"
         placeholder="tag, serial number or point"
