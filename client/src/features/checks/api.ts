@@ -1,10 +1,9 @@
-import { infiniteQueryOptions } from '@tanstack/react-query';
-import type { Check } from '../../../../shared/contracts/checks.ts';
+import { infiniteQueryOptions, queryOptions } from '@tanstack/react-query';
+import type { Check, CheckHistory } from '../../../../shared/contracts/checks.ts';
 import type { ListOf } from '../../../../shared/contracts/common.ts';
 import { http } from '../../lib/http.ts';
 
-/** Two years of weekly comparisons fit into one page; a daily one takes two. */
-const PAGE = 400;
+const PAGE = 50;
 
 /** The comparisons of one probe, newest first, those that do not count included. */
 export const probeChecks = (probeId: number) =>
@@ -14,4 +13,11 @@ export const probeChecks = (probeId: number) =>
       http.get<ListOf<Check>>('/api/checks', { query: { probeId, limit: PAGE, cursor: pageParam }, signal }),
     initialPageParam: null as string | null,
     getNextPageParam: (page) => page.nextCursor,
+  });
+
+/** What the history of a cell constant is drawn from, in at most 1 000 points. */
+export const probeHistory = (probeId: number) =>
+  queryOptions({
+    queryKey: ['checks', 'detail', probeId, 'history', {}] as const,
+    queryFn: ({ signal }) => http.get<CheckHistory>('/api/checks/history', { query: { probeId }, signal }),
   });

@@ -1,4 +1,4 @@
-import type { Check } from '../../../../shared/contracts/checks.ts';
+import type { CheckHistoryPoint } from '../../../../shared/contracts/checks.ts';
 import type { CellConstantInput, CellConstantPoint } from '../../components/charts/cell-constant-geometry.ts';
 
 interface ConstantEntry {
@@ -6,22 +6,21 @@ interface ConstantEntry {
   fromAt: string;
 }
 
-/** What the history of a cell constant is drawn from; null while no comparison counts and no constant is known. */
+/**
+ * What the history of a cell constant is drawn from; null while no comparison counts or no constant is known.
+ * Tolerance and guard band are those of the newest comparison: the channel says what is asked of the probe now.
+ */
 export function cellConstantHistory(
-  checks: readonly Check[],
+  points: readonly CheckHistoryPoint[],
   constants: readonly ConstantEntry[],
   now: number,
   timeZone: string,
 ): CellConstantInput | null {
-  const valid = checks.filter((check) => check.isValid && check.impliedCellConstantPerCm !== null);
-  const newest = valid.reduce<Check | null>(
-    (last, check) => (last && last.at > check.at ? last : check),
-    null,
-  );
+  const newest = points.at(-1);
   if (!newest || constants.length === 0) return null;
   const tolerancePercent = newest.tolerancePercent ?? 0;
   return {
-    points: valid.map(pointOf).sort((a, b) => a.at - b.at),
+    points: points.map(pointOf),
     constants: constants
       .map((entry) => ({ from: Date.parse(entry.fromAt), cellConstantPerCm: entry.cellConstantPerCm }))
       .sort((a, b) => a.from - b.from),
@@ -32,13 +31,12 @@ export function cellConstantHistory(
   };
 }
 
-function pointOf(check: Check): CellConstantPoint {
-  const constant = check.impliedCellConstantPerCm ?? 0;
-  const U = check.expandedUncertaintyPercent;
+function pointOf(point: CheckHistoryPoint): CellConstantPoint {
+  const { at, stage, impliedCellConstantPerCm, expandedUncertaintyPercent: U } = point;
   return {
-    at: Date.parse(check.at),
-    cellConstantPerCm: constant,
-    expandedUncertaintyPerCm: U === null ? null : (constant * U) / 100,
-    stage: check.stage,
+    at: Date.parse(at),
+    stage,
+    cellConstantPerCm: impliedCellConstantPerCm,
+    expandedUncertaintyPerCm: U === null ? null : (impliedCellConstantPerCm * U) / 100,
   };
 }

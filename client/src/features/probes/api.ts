@@ -18,8 +18,8 @@ export type ProbeFilters = Partial<Pick<ProbesQuery, 'q' | 'siteId' | 'kind' | '
 
 /** Enough for several screens; the next page is asked for before the end is reached. */
 const PAGE = 100;
-/** As many as stand beside the charts. */
-const EVENTS = 12;
+/** A probe with an automatic check has several events a day; most of them fold into one line. */
+const EVENTS = 200;
 
 export const probesList = (filters: ProbeFilters) =>
   infiniteQueryOptions({

@@ -93,6 +93,8 @@ export function traceState(row: LiveRow): 'plain' | 'stop' | 'held' | 'gone' {
   return needsPersonNow(row) ? 'stop' : 'plain';
 }
 
+/** Three of the two-minute steps of the trace. */
+const TRACE_GAP_MS = 360_000;
 type TracePoint = [t: number, valueUsCm: number | null];
 
 /** The trace up to now; where somebody works, up to when that began: what came after is no process. */
@@ -100,7 +102,11 @@ export function tracePoints(row: LiveRow, reading: ReadingNow | null): TracePoin
   const { hold } = row;
   if (hold) return row.trace.filter(([t]) => t <= Date.parse(hold.fromAt));
   if (row.trust.level === 'no-signal' || !reading) return row.trace;
-  return [...row.trace, [Date.parse(reading.at), reading.valueUsCm]];
+  const end: TracePoint = [Date.parse(reading.at), reading.valueUsCm];
+  const last = row.trace.at(-1);
+  // Nothing was heard in between: a line across would claim that something was.
+  const isGap = last !== undefined && end[0] - last[0] > TRACE_GAP_MS;
+  return isGap ? [...row.trace, [last[0] + 1, null], end] : [...row.trace, end];
 }
 
 /** `two-electrode · sk-11`, or that there is none. */

@@ -110,15 +110,17 @@ function silentWords(silent: readonly LiveRow[], now: number): string {
   return `one has been silent for ${spanInWords(now - Date.parse(first.reading.at))}`;
 }
 
-const SPANS: readonly [ms: number, name: string][] = [
-  [86_400_000, 'day'],
-  [3_600_000, 'hour'],
-  [60_000, 'minute'],
+const MINUTE_MS = 60_000;
+/** A unit is used until the next one up says enough: 90 minutes, then hours to a day and a half, then days. */
+const SPANS: readonly [limitMs: number, unitMs: number, name: string][] = [
+  [90 * MINUTE_MS, MINUTE_MS, 'minute'],
+  [36 * 60 * MINUTE_MS, 60 * MINUTE_MS, 'hour'],
+  [Infinity, 24 * 60 * MINUTE_MS, 'day'],
 ];
 
-/** A span as a sentence says it: `58 minutes`, `an hour` is written `one hour`. */
+/** A span as a sentence says it: `58 minutes`, `five hours`, `three days`. */
 export function spanInWords(ms: number): string {
-  const [size, name] = SPANS.find(([least]) => ms >= least) ?? [60_000, 'minute'];
-  const count = Math.max(1, Math.floor(ms / size));
+  const [, unit, name] = SPANS.find(([limit]) => ms < limit) ?? SPANS[0]!;
+  const count = Math.max(1, Math.floor(ms / unit));
   return `${countInWords(count)} ${name}${count === 1 ? '' : 's'}`;
 }

@@ -55,8 +55,22 @@ export interface Drawing {
   relativeUncertainty: number | null;
 }
 
+/** The answer as the chart takes it; where readings are missing the line is broken. */
 export function dataOf(series: Series, drawing: Drawing): SeriesDatum[] {
-  return series.points.map((point) => datumOf(point, drawing));
+  const data = series.points.map((point) => datumOf(point, drawing));
+  const gapMs = gapOf(series, data);
+  return data.flatMap((datum, i) => {
+    const before = data[i - 1];
+    return before && datum.t - before.t > gapMs ? [{ t: before.t + 1, mean: null }, datum] : [datum];
+  });
+}
+
+/** More than this between neighbours is a gap: two empty buckets, or five of the usual intervals. */
+function gapOf({ bucketSeconds }: Series, data: readonly SeriesDatum[]): number {
+  if (bucketSeconds !== null) return bucketSeconds * 3000;
+  const steps = data.slice(1).map((datum, i) => datum.t - (data[i]?.t ?? datum.t));
+  steps.sort((a, b) => a - b);
+  return (steps[Math.floor(steps.length / 2)] ?? Infinity) * 5;
 }
 
 function datumOf(point: SeriesPoint, { factor, relativeUncertainty }: Drawing): SeriesDatum {

@@ -1,9 +1,12 @@
-import { useInfiniteQuery } from '@tanstack/react-query';
-import { useEffect, useMemo } from 'react';
+import { useQuery } from '@tanstack/react-query';
+import { useMemo } from 'react';
+import type { CheckHistory } from '../../../../../shared/contracts/checks.ts';
+import { formatNumber } from '../../../../../shared/format/numbers.ts';
 import { CellConstantChart } from '../../../components/charts/cell-constant-chart.tsx';
-import { EmptyFace, FailedFace, LoadingFace } from '../../../components/ui/faces.tsx';
+import { Answer } from '../../../components/ui/answer.tsx';
+import { EmptyFace, LoadingFace } from '../../../components/ui/faces.tsx';
 import { SectionTitle } from '../../../components/ui/page-head.tsx';
-import { probeChecks } from '../api.ts';
+import { probeHistory } from '../api.ts';
 import { cellConstantHistory } from '../model.ts';
 
 export interface CellConstantSectionProps {
@@ -13,45 +16,51 @@ export interface CellConstantSectionProps {
 }
 
 /** The cell constant as KCl solutions have shown it, against the channel of tolerance around the one in use. */
-export function CellConstantSection({ probeId, constants, timeZone }: CellConstantSectionProps) {
-  const query = useInfiniteQuery(probeChecks(probeId));
-  const { hasNextPage, isFetchingNextPage, fetchNextPage } = query;
-  useEffect(() => {
-    // A history with its beginning cut off would show drift that never was.
-    if (hasNextPage && !isFetchingNextPage) void fetchNextPage();
-  }, [hasNextPage, isFetchingNextPage, fetchNextPage]);
-  const updatedAt = query.dataUpdatedAt;
-  const history = useMemo(
-    () =>
-      query.data
-        ? cellConstantHistory(
-            query.data.pages.flatMap((page) => page.items),
-            constants,
-            updatedAt,
-            timeZone,
-          )
-        : null,
-    [query.data, constants, updatedAt, timeZone],
-  );
+export function CellConstantSection({ probeId, ...rest }: CellConstantSectionProps) {
+  const query = useQuery(probeHistory(probeId));
   return (
     <section>
       <SectionTitle note="as determined in KCl, with U; channel is the tolerance around the constant in use">
         Cell constant
       </SectionTitle>
-      {query.isPending ? <LoadingFace label="Fetching the comparisons" rows={1} rowHeight={430} /> : null}
-      {query.isError && !query.data ? (
-        <FailedFace
-          title="Could not fetch the comparisons."
-          error={query.error}
-          onRetry={() => query.refetch()}
-        />
-      ) : null}
-      {query.data && !history ? (
-        <EmptyFace title="Never compared yet.">
-          The first comparison with a reference solution opens this history.
-        </EmptyFace>
-      ) : null}
-      {history ? <CellConstantChart {...history} /> : null}
+      <Answer
+        query={query}
+        what="the comparisons"
+        loading={<LoadingFace label="Fetching the comparisons" rows={1} rowHeight={430} />}
+      >
+        {(history) => <History history={history} fetchedAt={query.dataUpdatedAt} {...rest} />}
+      </Answer>
     </section>
+  );
+}
+
+interface HistoryProps extends Omit<CellConstantSectionProps, 'probeId'> {
+  history: CheckHistory;
+  fetchedAt: number;
+}
+
+function History({ history, fetchedAt, constants, timeZone }: HistoryProps) {
+  const drawn = useMemo(
+    () => cellConstantHistory(history.points, constants, fetchedAt, timeZone),
+    [history, constants, fetchedAt, timeZone],
+  );
+  if (!drawn) {
+    return (
+      <EmptyFace title="Never compared yet.">
+        The first comparison with a reference solution opens this history.
+      </EmptyFace>
+    );
+  }
+  const left = history.total - history.points.length;
+  return (
+    <>
+      <CellConstantChart {...drawn} />
+      {left > 0 ? (
+        <p className="page-foot">
+          {formatNumber(history.points.length)} of {formatNumber(history.total)} comparisons are drawn:
+          automatic checks evenly thinned, the others all.
+        </p>
+      ) : null}
+    </>
   );
 }

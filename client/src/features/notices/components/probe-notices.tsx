@@ -21,7 +21,7 @@ function OpenNotice({ notice, timeZone }: { notice: Notice; timeZone: string }) 
   return (
     <div className="probe-notice">
       <Caution>
-        <b>{capitalise(NOTICE_LABELS[notice.kind])}.</b> {notice.text}{' '}
+        <b>{capitalise(NOTICE_LABELS[notice.kind])}.</b> {moreThanLabel(notice)}{' '}
         {formatDateTime(notice.at, { timeZone, offset: true })}.{' '}
         {notice.can.close ? (
           <Button kind="quiet" onClick={() => setIsClosing(true)}>
@@ -40,4 +40,10 @@ function OpenNotice({ notice, timeZone }: { notice: Notice; timeZone: string }) 
       />
     </div>
   );
+}
+
+/** What the notice says beyond its kind; some kinds are the whole message. */
+function moreThanLabel({ kind, text }: Notice): string {
+  const plain = (words: string) => words.toLowerCase().replace(/\.$/, '');
+  return plain(text) === plain(NOTICE_LABELS[kind]) ? '' : text;
 }

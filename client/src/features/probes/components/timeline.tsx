@@ -1,8 +1,8 @@
 import { useInfiniteQuery } from '@tanstack/react-query';
 import type { ReactNode } from 'react';
-import { useState } from 'react';
+import { useEffect, useMemo, useState } from 'react';
 import type { ProbeEvent } from '../../../../../shared/contracts/probes.ts';
-import { formatDate, formatTime } from '../../../../../shared/format/dates.ts';
+import { formatDate, formatDay, formatTime } from '../../../../../shared/format/dates.ts';
 import { ToleranceStrip } from '../../../components/strip/tolerance-strip.tsx';
 import { Button } from '../../../components/ui/button.tsx';
 import { EmptyFace, FailedFace, LoadingFace } from '../../../components/ui/faces.tsx';
@@ -11,10 +11,24 @@ import { probeEvents } from '../api.ts';
 import type { TimelineShape } from '../model.ts';
 import { foldTimeline, runWords, stripInput, timelineShape } from '../model.ts';
 
+/** About as many as stand beside the charts. */
+const FIRST_LINES = 12;
+const MORE_LINES = 24;
+
 /** Everything that ever happened to a probe, newest first, each with the drawing it left. */
 export function Timeline({ probeId, timeZone }: { probeId: number; timeZone: string }) {
   const query = useInfiniteQuery(probeEvents(probeId));
-  const events = query.data?.pages.flatMap((page) => page.items) ?? [];
+  const [lines, setLines] = useState(FIRST_LINES);
+  const entries = useMemo(
+    () => foldTimeline(query.data?.pages.flatMap((page) => page.items) ?? []),
+    [query.data],
+  );
+  const { hasNextPage, isFetchingNextPage, fetchNextPage } = query;
+  const isShort = entries.length < lines;
+  useEffect(() => {
+    // Routine checks fold into few lines: older events are fetched until what was asked for is there.
+    if (isShort && hasNextPage && !isFetchingNextPage) void fetchNextPage();
+  }, [isShort, hasNextPage, isFetchingNextPage, fetchNextPage]);
   return (
     <section>
       <SectionTitle note="newest first">Every event</SectionTitle>
@@ -22,18 +36,20 @@ export function Timeline({ probeId, timeZone }: { probeId: number; timeZone: str
       {query.isError && !query.data ? (
         <FailedFace title="Could not fetch the events." error={query.error} onRetry={() => query.refetch()} />
       ) : null}
-      {query.data && events.length === 0 ? <EmptyFace title="Nothing has happened yet." /> : null}
+      {query.data && entries.length === 0 ? <EmptyFace title="Nothing has happened yet." /> : null}
       <ol className="timeline">
-        {foldTimeline(events).map((entry) =>
-          entry.kind === 'run' ? (
-            <Run key={entry.key} events={entry.events} timeZone={timeZone} />
-          ) : (
-            <Event key={entry.event.key} event={entry.event} timeZone={timeZone} />
-          ),
-        )}
+        {entries
+          .slice(0, lines)
+          .map((entry) =>
+            entry.kind === 'run' ? (
+              <Run key={entry.key} events={entry.events} timeZone={timeZone} />
+            ) : (
+              <Event key={entry.event.key} event={entry.event} timeZone={timeZone} />
+            ),
+          )}
       </ol>
-      {query.hasNextPage ? (
-        <Button isPending={query.isFetchingNextPage} onClick={() => query.fetchNextPage()}>
+      {hasNextPage || entries.length > lines ? (
+        <Button isPending={isFetchingNextPage} onClick={() => setLines(lines + MORE_LINES)}>
           Show earlier events
         </Button>
       ) : null}
@@ -55,7 +71,7 @@ function Line({ from, until, shape, timeZone, children }: LineProps) {
     <li>
       <time dateTime={from}>
         {formatDate(from, { timeZone })}
-        <small>{until ? `back to ${formatDate(until, { timeZone })}` : formatTime(from, { timeZone })}</small>
+        <small>{until ? `since ${formatDay(until, { timeZone })}` : formatTime(from, { timeZone })}</small>
       </time>
       <span className="timeline-glyph">
         <svg width="26" height="14" viewBox="0 0 26 14" aria-hidden="true">
