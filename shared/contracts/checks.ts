@@ -52,3 +52,24 @@ export const checksQuery = listQuery.extend({
   stage: z.enum(checkStages).optional(),
 });
 export type ChecksQuery = z.infer<typeof checksQuery>;
+
+/** What the history of a cell constant is drawn from; the server decides how much of it. */
+export const checkHistoryQuery = z.object({ probeId: idParam });
+export type CheckHistoryQuery = z.infer<typeof checkHistoryQuery>;
+export const maxHistoryPoints = 1000;
+export const checkHistoryPoint = z.object({
+  id,
+  at: instant,
+  stage: z.enum(checkStages),
+  impliedCellConstantPerCm: z.number(),
+  expandedUncertaintyPercent: z.number().nullable(),
+  tolerancePercent: z.number().nullable(),
+  acceptanceLimitPercent: z.number().nullable(),
+});
+export type CheckHistoryPoint = z.infer<typeof checkHistoryPoint>;
+export const checkHistory = z.object({
+  probeId: id,
+  total: z.number().int().describe('comparisons that count, drawn or not'),
+  points: z.array(checkHistoryPoint).max(maxHistoryPoints).describe('oldest first'),
+});
+export type CheckHistory = z.infer<typeof checkHistory>;

@@ -1,5 +1,5 @@
 import { QueryTypes } from 'sequelize';
-import type { Check } from '../../../shared/contracts/checks.ts';
+import { maxHistoryPoints, type Check, type CheckHistoryPoint } from '../../../shared/contracts/checks.ts';
 import type { CheckStage } from '../../../shared/contracts/vocabulary.ts';
 import type { CursorKey } from '../../http/paging.ts';
 import type { Parts } from '../../parts.ts';
@@ -72,4 +72,43 @@ export async function countChecks(parts: Pick<Parts, 'sequelize'>, filter: Check
     { type: QueryTypes.SELECT, bind: { ...filter } },
   );
   return row?.total ?? 0;
+}
+
+export interface HistoryRow extends Omit<CheckHistoryPoint, 'at'> {
+  at: Date;
+  /** Of all that count, before thinning. */
+  total: number;
+}
+
+/** What people determined is rare and matters most; the rest of the drawing is left to automatic checks. */
+const mostByPeople = 400;
+const mostAutomatic = maxHistoryPoints - mostByPeople;
+
+/**
+ * The comparisons of one probe that count, oldest first. The newest of those made by people stay whole; automatic
+ * ones are thinned evenly, counted from the newest back.
+ */
+export function selectHistory(
+  parts: Pick<Parts, 'sequelize'>,
+  filter: { probeId: number; siteIds: number[] | null },
+): Promise<HistoryRow[]> {
+  return parts.sequelize.query<HistoryRow>(
+    `with counted as (
+       select c.id, c.at, c.stage, c.stage = 'automatic' as is_automatic, c.implied_cell_constant_per_cm,
+         c.expanded_uncertainty_percent, c.tolerance_percent, c.acceptance_limit_percent,
+         row_number() over (partition by c.stage = 'automatic' order by c.at desc, c.id desc) as place,
+         count(*) over (partition by c.stage = 'automatic') as among, count(*) over () as total
+       ${joins}
+       where c.probe_id = $probeId and c.is_valid and c.implied_cell_constant_per_cm is not null
+         and ($siteIds::int[] is null or ${site} = any($siteIds))
+     )
+     select id, at, stage, implied_cell_constant_per_cm as "impliedCellConstantPerCm",
+       expanded_uncertainty_percent as "expandedUncertaintyPercent", tolerance_percent as "tolerancePercent",
+       acceptance_limit_percent as "acceptanceLimitPercent", total
+     from counted
+     where case when is_automatic then (place - 1) % ceil(among / $mostAutomatic::numeric)::bigint = 0
+       else place <= $mostByPeople end
+     order by at, id`,
+    { type: QueryTypes.SELECT, bind: { ...filter, mostAutomatic, mostByPeople } },
+  );
 }

@@ -1,7 +1,7 @@
-import { check, checksQuery } from '../../../shared/contracts/checks.ts';
+import { check, checkHistory, checkHistoryQuery, checksQuery } from '../../../shared/contracts/checks.ts';
 import { idPath, listOf } from '../../../shared/contracts/common.ts';
 import { route, type AnyRoute } from '../../http/route.ts';
-import { presentCheck } from './presenter.ts';
+import { presentCheck, presentHistory } from './presenter.ts';
 import * as checks from './service.ts';
 
 export const checkRoutes: AnyRoute[] = [
@@ -16,6 +16,16 @@ export const checkRoutes: AnyRoute[] = [
       const { items, ...rest } = await checks.listChecks(parts, actor, query);
       return { items: items.map(presentCheck), ...rest };
     },
+  }),
+  route({
+    verb: 'get',
+    path: '/api/checks/history',
+    access: 'session',
+    does: 'Gives what a probe’s cell constant was found to be, in at most 1 000 points.',
+    query: checkHistoryQuery,
+    answer: checkHistory,
+    run: async ({ parts, actor, query }) =>
+      presentHistory(await checks.readHistory(parts, actor, query.probeId)),
   }),
   route({
     verb: 'get',

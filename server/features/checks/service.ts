@@ -6,7 +6,15 @@ import { readableSites, type Actor } from '../../http/actor.ts';
 import { pageOf, readCursor } from '../../http/paging.ts';
 import { containsPattern } from '../../lib/text-pattern.ts';
 import type { Parts } from '../../parts.ts';
-import { countChecks, selectChecks, type CheckFilter, type CheckRow } from './queries.ts';
+import { readProbe } from '../probes/service.ts';
+import {
+  countChecks,
+  selectChecks,
+  selectHistory,
+  type CheckFilter,
+  type CheckRow,
+  type HistoryRow,
+} from './queries.ts';
 
 const noFilter = {
   siteId: null,
@@ -42,4 +50,15 @@ export async function readCheck(parts: Parts, actor: Actor, id: number): Promise
   const [row] = await selectChecks(parts, filter, null, 1);
   if (!row) throw new AppError('checks.not-found');
   return row;
+}
+
+/** What the history of a probe's cell constant is drawn from. */
+export async function readHistory(
+  parts: Parts,
+  actor: Actor,
+  probeId: number,
+): Promise<{ probeId: number; rows: HistoryRow[] }> {
+  await readProbe(parts, actor, probeId);
+  const filter = { probeId, siteIds: readableSites(actor) };
+  return { probeId, rows: await selectHistory(parts, filter) };
 }
