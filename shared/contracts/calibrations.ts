@@ -181,6 +181,7 @@ export const judgement = z.object({
   asFound: verdict.nullable(),
   cleaned: verdict.nullable(),
   asLeft: verdict.nullable(),
+  asLeftEqualsCleaned: z.boolean().describe('left as it was: not measured again'),
   secondPoint: verdict.nullable(),
   fouling: change.nullable(),
   driftSinceAsLeft: change.nullable(),
@@ -295,9 +296,27 @@ export const calibration = calibrationRow.extend({
     approve: z.boolean(),
     return: z.boolean(),
     amend: z.boolean(),
+    sendAgain: z.boolean().describe('the device has not confirmed the cell constant: order it once more'),
   }),
 });
 export type Calibration = z.infer<typeof calibration>;
+
+export const capturePath = z.object({ id: idParam, captureId: idParam });
+
+/** A signed record: SHA-256 of the canonical form (RFC 8785) of `record` is `recordHash`. */
+export const calibrationRecord = z.object({
+  number: z.string(),
+  status: z.enum(calibrationStatuses),
+  record: z.record(z.string(), z.unknown()),
+  canonicalForm: z.literal('RFC 8785'),
+  hashAlgorithm: z.literal('SHA-256'),
+  recordHash: z.string(),
+  signatures: z.array(signature),
+  dueOn: day.nullable(),
+  amends: z.string().nullable(),
+  amendedBy: z.string().nullable(),
+});
+export type CalibrationRecord = z.infer<typeof calibrationRecord>;
 
 export const calibrationsQuery = listQuery.extend({
   siteId: idParam.optional(),

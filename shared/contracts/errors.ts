@@ -137,6 +137,10 @@ export const errorCodes = define({
     'Somebody changed this lot meanwhile. Reload and repeat your change.',
   ],
   'standards.state-impossible': ['conflict', 'A recalled lot stays recalled.'],
+  'standards.not-dilutable': [
+    'conflict',
+    'Only a released, unexpired lot of potassium chloride in water can be diluted.',
+  ],
 
   'checks.not-found': ['not-found', 'No such check, or not one you may see.'],
   'readings.window-invalid': ['invalid', 'The period must start before it ends and span at most ten years.'],
@@ -157,7 +161,7 @@ export const errorCodes = define({
   'mails.forbidden': ['forbidden', 'Only an administrator reads the mail outbox.'],
 
   'procedures.not-found': ['not-found', 'No such procedure, or none that applies to this probe.'],
-  'procedures.forbidden': ['forbidden', 'Only a manager or an administrator edits procedures.'],
+  'procedures.forbidden': ['forbidden', 'Only a manager or an administrator of all sites edits procedures.'],
   'procedures.changed-meanwhile': [
     'conflict',
     'Somebody issued a newer version meanwhile. Reload and repeat your change.',
@@ -170,6 +174,13 @@ export const errorCodes = define({
   'bottles.not-found': ['not-found', 'No such bottle.'],
   'bottles.forbidden': ['forbidden', 'Your role does not allow this for bottles.'],
   'bottles.code-taken': ['conflict', 'Another bottle already has this code.'],
+  'bottles.changed-meanwhile': [
+    'conflict',
+    'Somebody changed this bottle meanwhile. Reload and repeat your change.',
+  ],
+  'bottles.opened-already': ['conflict', 'This bottle was opened before. Its date of opening stays.'],
+  'bottles.not-open': ['conflict', 'This bottle is not open: open it first, so that its time begins.'],
+  'bottles.discarded': ['conflict', 'This bottle is discarded.'],
   'bottles.unusable': [
     'conflict',
     'This bottle cannot be used: it is discarded, past its time after opening, or its lot is not usable.',
@@ -182,6 +193,11 @@ export const errorCodes = define({
     'Somebody changed this instrument meanwhile. Reload and repeat your change.',
   ],
   'instruments.overdue': ['conflict', 'This reference instrument is past its due date or out of use.'],
+  'certificates.forbidden': ['forbidden', 'Your role does not allow adding certificate files.'],
+  'certificates.changed-meanwhile': [
+    'conflict',
+    'Somebody stored the same file at the same moment. Try again.',
+  ],
   'certificates.not-found': ['not-found', 'No such certificate file.'],
   'certificates.type-unknown': ['invalid', 'The file is not a PDF, PNG or JPEG by its content.'],
   'certificates.too-large': ['invalid', 'The file is larger than 10 MB.'],
@@ -232,6 +248,19 @@ export const errorCodes = define({
   'calibrations.password-wrong': ['invalid', 'The password is not right. The signature was not made.'],
   'calibrations.own-approval': ['forbidden', 'The person who performed a run never approves it.'],
   'calibrations.not-signed': ['conflict', 'Only a signed run can be reviewed.'],
+  'calibrations.open-beaker': [
+    'conflict',
+    'This solution is too dilute for an open beaker: carbon dioxide of the air changes it meanwhile. Compare in line with a reference cell instead.',
+  ],
+  'calibrations.review-not-needed': [
+    'conflict',
+    'This site asks for no review: the run took effect when it was signed.',
+  ],
+  'calibrations.amended': ['conflict', 'This record is amended already. Amend the newest one.'],
+  'calibrations.command-not-open': [
+    'conflict',
+    'There is no order to the device that could be sent again: none was made, it is waiting, or it is confirmed.',
+  ],
   'calibrations.hand-over-impossible': [
     'conflict',
     'A run is handed over to another technician of the same site.',

@@ -25,6 +25,8 @@ export type CheckInput = {
   /** Standard deviation of the reading (of the mean, when it is one), % of the reference. */
   repeatabilityPercent?: number;
   repeatabilityDegreesOfFreedom?: number;
+  /** What the circumstances add (rinsing, an opened bottle, a wall): the result is % of the reference. */
+  otherComponents?: readonly UncertaintyComponent[];
   /** 0.9545 unless given: k = 2 when every component is well known. */
   coverageProbability?: number;
 };
@@ -92,17 +94,17 @@ function components(input: CheckInput, reference: LotReference): UncertaintyComp
         : { degreesOfFreedom: input.repeatabilityDegreesOfFreedom }),
     });
   }
-  return found;
+  return [...found, ...(input.otherComponents ?? [])];
 }
 
 /**
  * Evaluates a check reading of a probe in a lot of reference solution.
  *
  * e = 100 (kappa_indicated/kappa_ref(t) - 1);  K_implied = K kappa_ref(t)/kappa_indicated
- * u² = u_lot² + (kappa'/kappa u_t)² + u_interpolation² + (r/(2 sqrt 3))² + s²;  U = k u;  outcome by the decision rule
+ * u² = u_lot² + (kappa'/kappa u_t)² + u_interpolation² + (r/(2 sqrt 3))² + s² + others;  U = k u;  outcome by the decision rule
  *
  * @param input lot; temperatureC (°C) with its standard uncertainty (K); conductivityUsCm indicated, raw; cellConstantPerCm in use
- *   (cm⁻¹); tolerancePercent above 0; rule; resolutionUsCm, repeatabilityPercent with degrees of freedom, coverageProbability if known
+ *   (cm⁻¹); tolerancePercent above 0; rule; resolutionUsCm, repeatabilityPercent with degrees of freedom, otherComponents, coverageProbability if known
  * @returns reference and error in µS/cm, error in %, implied cell constant in cm⁻¹, U in % with k, outcome, two-sided probability of
  *   being outside the tolerance, acceptance limit in %, budget in %
  * @throws OutOfDomainError and the other refusals of lotReferenceConductivity, combineUncertainty and decide

@@ -105,6 +105,23 @@ export async function checkCredentials(
   return user.id;
 }
 
+/**
+ * The password again, for a signature. False when it is wrong; a wrong one counts towards the lock like one at sign-in.
+ */
+export async function confirmPerson(
+  parts: Parts,
+  userId: number,
+  password: string,
+  source: RequestSource,
+): Promise<boolean> {
+  const user = await User.findByPk(userId);
+  if (user?.lockedUntil && user.lockedUntil > parts.clock.now()) throw new AppError('sessions.locked');
+  const isRight = await verifyPassword(user?.passwordHash ?? (await noOnesHash), password);
+  if (user?.passwordHash && isRight && user.deactivatedAt === null) return true;
+  await recordFailure(parts, user, user?.email ?? 'nobody', source);
+  return false;
+}
+
 export async function recordSignOut(parts: Parts, actor: Actor): Promise<void> {
   await inTransaction(parts.sequelize, (transaction) =>
     recordAuditEvent(parts, transaction, actor, {
