@@ -1,14 +1,19 @@
 /** Every slice's table, in the order of the description. A new slice adds one line. */
 import type { AnyRoute } from '../http/route.ts';
 import { auditEventRoutes } from './audit-events/routes.ts';
+import { bottleRoutes } from './bottles/routes.ts';
 import { calculationRoutes } from './calculations/routes.ts';
+import { calibrationRoutes } from './calibrations/routes.ts';
+import { certificateRoutes } from './certificates/routes.ts';
 import { checkRoutes } from './checks/routes.ts';
 import { deviceRoutes } from './devices/routes.ts';
+import { instrumentRoutes } from './instruments/routes.ts';
 import { mailRoutes } from './mails/routes.ts';
 import { membershipRoutes } from './memberships/routes.ts';
 import { noticeRoutes } from './notices/routes.ts';
 import { pointRoutes } from './points/routes.ts';
 import { probeRoutes } from './probes/routes.ts';
+import { procedureRoutes } from './procedures/routes.ts';
 import { quarantineRoutes } from './quarantine/routes.ts';
 import { readingRoutes } from './readings/routes.ts';
 import { searchRoutes } from './search/routes.ts';
@@ -27,6 +32,11 @@ export const allRoutes: readonly AnyRoute[] = [
   ...probeRoutes,
   ...deviceRoutes,
   ...standardRoutes,
+  ...bottleRoutes,
+  ...certificateRoutes,
+  ...instrumentRoutes,
+  ...procedureRoutes,
+  ...calibrationRoutes,
   ...readingRoutes,
   ...checkRoutes,
   ...quarantineRoutes,

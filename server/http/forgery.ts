@@ -1,7 +1,11 @@
 import type { NextFunction, Request, Response } from 'express';
+import { certificateMediaTypes } from '../../shared/contracts/certificates.ts';
 import { AppError } from '../errors.ts';
 
 const safeMethods = new Set(['GET', 'HEAD', 'OPTIONS']);
+
+/** A file is no JSON. These types need a preflight too, so that a cross-site form cannot send them either. */
+const uploads: Readonly<Record<string, readonly string[]>> = { '/api/certificates': certificateMediaTypes };
 
 /**
  * Request-forgery protection for cookie sessions: a browser always says where a write comes from
@@ -17,7 +21,8 @@ export function refuseForgery(request: Request, _response: Response, next: NextF
   if (origin && !isOwnOrigin(origin, request)) throw new AppError('request.forgery-suspected');
   const hasBody =
     Number(request.get('content-length') ?? 0) > 0 || request.get('transfer-encoding') !== undefined;
-  if (hasBody && !request.is('application/json')) throw new AppError('request.unparsable');
+  const types = uploads[request.baseUrl + request.path.replace(/\/$/, '')] ?? ['application/json'];
+  if (hasBody && !request.is([...types])) throw new AppError('request.unparsable');
   next();
 }
 

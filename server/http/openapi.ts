@@ -25,9 +25,13 @@ function parametersOf(schema: z.ZodType | undefined, where: 'path' | 'query'): J
   }));
 }
 
+/** Bytes have no schema in OpenAPI 3.1: the media type says it all. */
+const contentOf = (mediaTypes: readonly string[]): Json =>
+  Object.fromEntries(mediaTypes.map((mediaType) => [mediaType, {}]));
+
 function operationOf(spec: AnyRoute): Json {
   const slice = spec.path.split('/')[2] ?? 'api';
-  const success = String(spec.answer ? (spec.status ?? 200) : 204);
+  const success = String(spec.answer || spec.sends ? (spec.status ?? 200) : 204);
   return {
     operationId: `${spec.verb}${spec.path.replace(/^\/api/, '').replace(/[^A-Za-z0-9]+(.)?/g, (_, next: string | undefined) => next?.toUpperCase() ?? '')}`,
     summary: spec.does,
@@ -40,9 +44,11 @@ function operationOf(spec: AnyRoute): Json {
         content: { 'application/json': { schema: schemaOf(spec.body, 'input') } },
       },
     }),
+    ...(spec.bytes && { requestBody: { required: true, content: contentOf(spec.bytes.mediaTypes) } }),
     responses: {
       [success]: {
-        description: spec.answer ? 'Done.' : 'Done; no body.',
+        description: spec.answer || spec.sends ? 'Done.' : 'Done; no body.',
+        ...(spec.sends && { content: contentOf(spec.sends) }),
         ...(spec.answer && { content: { 'application/json': { schema: schemaOf(spec.answer, 'output') } } }),
       },
       default: {

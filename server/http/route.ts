@@ -4,10 +4,26 @@
  */
 import type { Request, Response } from 'express';
 import type { z } from 'zod';
+import type { ErrorCode } from '../../shared/contracts/errors.ts';
 import type { Parts } from '../parts.ts';
 import type { Actor } from './actor.ts';
 
 export type Verb = 'get' | 'post' | 'patch' | 'put' | 'delete';
+/** A body that is bytes and no JSON. Read only after the person is known. */
+export interface ByteBody {
+  mediaTypes: readonly string[];
+  largestBytes: number;
+  /** Refusal of a larger one. */
+  tooLarge: ErrorCode;
+}
+
+/** An answer that is bytes and no JSON; with a file name the browser saves it instead of showing it. */
+export interface ByteAnswer {
+  mediaType: string;
+  bytes: Buffer | string;
+  fileName?: string;
+}
+
 type Infer<S> = S extends z.ZodType ? z.output<S> : undefined;
 
 export interface Call<Access, Params, Query, Body> {
@@ -36,13 +52,17 @@ export interface RouteSpec<
   params?: Params;
   query?: Query;
   body?: Body;
+  /** Takes bytes instead of JSON: they are `request.body`, a Buffer. */
+  bytes?: ByteBody;
   /** Contract of the answer; left out = 204 without a body. */
   answer?: Answer;
+  /** Answers bytes of these types instead of JSON: `run` gives a ByteAnswer. */
+  sends?: readonly string[];
   /** 200 unless told; 201 for a creation. */
   status?: number;
   run: (
     call: Call<Access, Params, Query, Body>,
-  ) => Promise<Answer extends z.ZodType ? z.input<Answer> : void>;
+  ) => Promise<Answer extends z.ZodType ? z.input<Answer> : ByteAnswer | void>;
 }
 
 /** A route whose types have been checked and may stand in a table with others. */

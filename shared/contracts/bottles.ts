@@ -15,6 +15,7 @@ export const bottle = z.object({
   openedBy: z.string().nullable(),
   useByOn: day.nullable().describe('the earlier of the lot’s expiry and the time after opening'),
   discardedAt: instant.nullable(),
+  discardedReason: z.string().nullable(),
   isUsable: z.boolean(),
   version,
   can: z.object({ open: z.boolean(), discard: z.boolean(), setRemaining: z.boolean() }),
@@ -28,10 +29,14 @@ export const receiveBottles = z.object({
   volumeMl: z.number().positive().max(20_000),
 });
 export type ReceiveBottles = z.infer<typeof receiveBottles>;
-export const setRemaining = z.object({ remainingMl: z.number().min(0), version });
+export const openBottle = z.object({ version });
+export const setRemaining = z.object({ remainingMl: z.number().min(0).max(20_000), version });
+export type SetRemaining = z.infer<typeof setRemaining>;
 export const discardBottle = z.object({ reason, version });
+export type DiscardBottle = z.infer<typeof discardBottle>;
 export const bottlesQuery = listQuery.extend({
   standardId: idParam.optional(),
   siteId: idParam.optional(),
   usable: z.enum(['1']).optional(),
 });
+export type BottlesQuery = z.infer<typeof bottlesQuery>;

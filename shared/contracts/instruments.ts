@@ -1,6 +1,11 @@
 import { z } from 'zod';
-import { day, id, longText, reason, shortText, version } from './common.ts';
-import { instrumentKinds, instrumentStates } from './vocabulary.ts';
+import { certificate } from './certificates.ts';
+import { day, id, instant, listQuery, longText, reason, shortText, version } from './common.ts';
+import { calibrationStatuses, instrumentKinds, instrumentStates } from './vocabulary.ts';
+
+/** `C` is a kelvin of error as well: a difference of temperatures. */
+export const uncertaintyUnits = ['C', 'percent', 'uS/cm', 'ohm', 'g'] as const;
+export type UncertaintyUnit = (typeof uncertaintyUnits)[number];
 
 const facts = z.object({
   kind: z.enum(instrumentKinds),
@@ -10,9 +15,9 @@ const facts = z.object({
   issuedOn: day,
   dueOn: day,
   expandedUncertainty: z.number().positive().describe('in uncertaintyUnit'),
-  uncertaintyUnit: z.enum(['C', 'percent', 'uS/cm', 'ohm', 'g']),
+  uncertaintyUnit: z.enum(uncertaintyUnits),
   coverageFactor: z.number().min(1).max(4),
-  correction: z.number().describe('added to the indication, in uncertaintyUnit').default(0),
+  correction: z.number().describe('added to the indication, in uncertaintyUnit'),
   traceability: longText,
 });
 
@@ -21,8 +26,8 @@ export const instrument = facts.extend({
   code: z.string(),
   state: z.enum(instrumentStates),
   isUsable: z.boolean().describe('in use and not past its due date'),
-  certificateId: id.nullable(),
-  runCount: z.number().int(),
+  certificate: certificate.nullable(),
+  runCount: z.number().int().describe('calibrations that used it, at the sites the person may read'),
   version,
   can: z.object({ change: z.boolean(), uploadCertificate: z.boolean() }),
 });
@@ -36,7 +41,9 @@ const code = z
 const dueAfterIssue = (given: { issuedOn?: string | undefined; dueOn?: string | undefined }) =>
   given.issuedOn === undefined || given.dueOn === undefined || given.issuedOn < given.dueOn;
 const dueSays = { path: ['dueOn'], message: 'The due date must lie after the certificate’s date.' };
-export const createInstrument = facts.extend({ code }).refine(dueAfterIssue, dueSays);
+export const createInstrument = facts
+  .extend({ code, correction: facts.shape.correction.default(0) })
+  .refine(dueAfterIssue, dueSays);
 export type CreateInstrument = z.infer<typeof createInstrument>;
 export const changeInstrument = facts
   .omit({ kind: true })
@@ -44,3 +51,23 @@ export const changeInstrument = facts
   .extend({ state: z.enum(instrumentStates).optional(), reason, version })
   .refine(dueAfterIssue, dueSays);
 export type ChangeInstrument = z.infer<typeof changeInstrument>;
+
+export const instrumentsQuery = listQuery.extend({
+  kind: z.enum(instrumentKinds).optional(),
+  usable: z.enum(['1']).optional(),
+});
+export type InstrumentsQuery = z.infer<typeof instrumentsQuery>;
+
+/** A run that used the instrument, newest first. */
+export const instrumentUse = z.object({
+  calibrationId: id,
+  number: z.string().nullable(),
+  status: z.enum(calibrationStatuses),
+  probeId: id,
+  probeTag: z.string(),
+  pointName: z.string(),
+  siteName: z.string(),
+  performer: z.string(),
+  startedAt: instant,
+});
+export type InstrumentUse = z.infer<typeof instrumentUse>;

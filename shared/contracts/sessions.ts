@@ -31,6 +31,8 @@ export const session = z.object({
     createPoint: z.boolean(),
     registerProbe: z.boolean(),
     createStandard: z.boolean(),
+    prepareStandard: z.boolean(),
+    createInstrument: z.boolean(),
   }),
 });
 export type Session = z.infer<typeof session>;

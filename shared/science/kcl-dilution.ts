@@ -64,7 +64,7 @@ export type KclDilution = {
   /** Conductivity at 25 °C of the solution that is diluted, and its standard uncertainty. */
   stockConductivityUsCm: number;
   stockStandardUncertaintyUsCm: number;
-  /** Part of that conductivity which is the stock's own water; 0 unless given. */
+  /** Part of that conductivity which is the stock's own water. Not given = not known: up to what air puts into water. */
   stockBlankUsCm?: number;
   /** Balance readings in air. */
   stockReadingG: number;
@@ -170,6 +170,13 @@ function componentsOf(
     normal('temperature shape', TEMPERATURE_MODEL, kappa),
     normal('conductivity of the water', blankU, 1),
   ];
+  if (given.stockBlankUsCm === undefined)
+    lines.push({
+      name: 'water in the lot, not known',
+      value: CARBON_DIOXIDE_US_CM,
+      sensitivity: kappa / given.stockConductivityUsCm,
+      distribution: 'rectangular',
+    });
   if (given.isBlankInSameState) return lines;
   return [
     ...lines,

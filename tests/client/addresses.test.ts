@@ -17,6 +17,8 @@ const session = (readAudit: boolean): Session => ({
     createPoint: false,
     registerProbe: false,
     createStandard: false,
+    prepareStandard: false,
+    createInstrument: false,
   },
 });
 

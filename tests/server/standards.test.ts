@@ -186,7 +186,7 @@ describe('reference solutions', () => {
       can: { release: true, quarantine: false, recall: true },
     });
     expect(made.label.replace(/[\u2009\u00a0]/g, ' ')).toBe(
-      'KCl 0.01 D (demal), certified 1 409.3 µS/cm at 25 °C',
+      'KCl 0.01 D (demal), in-house value 1 409.3 µS/cm at 25 °C',
     );
     expect(await app.audited('standards.created')).toMatchObject({
       objectId: String(made.id),

@@ -2,10 +2,12 @@
 import {
   Area,
   Assignment,
+  Bottle,
   CellConstant,
   Check,
   Device,
   DeviceBoot,
+  Instrument,
   LiveReading,
   Point,
   Probe,
@@ -229,5 +231,40 @@ export const aCheck = (
     at: new Date('2026-11-20T09:00:00Z'),
     performedByUserId: null,
     ...where,
+    ...more,
+  });
+
+/** A thermometer in use, due in half a year: U 0.05 °C. */
+export const anInstrument = (more: Partial<Instrument> = {}): Promise<Instrument> => {
+  const n = next();
+  return Instrument.create({
+    code: `RT-${n}`,
+    kind: 'thermometer',
+    name: 'Reference thermometer',
+    serial: `TH-${n}`,
+    certificateNumber: `C-${n}`,
+    issuedOn: '2026-06-01',
+    dueOn: '2027-06-01',
+    expandedUncertainty: 0.05,
+    uncertaintyUnit: 'C',
+    coverageFactor: 2,
+    certificateId: null,
+    ...more,
+  });
+};
+
+/** A full, unopened bottle of the lot. */
+export const aBottle = (standardId: number, more: Partial<Bottle> = {}): Promise<Bottle> =>
+  Bottle.create({
+    code: `BOTTLE/${next()}`,
+    standardId,
+    siteId: null,
+    volumeMl: 500,
+    remainingMl: 500,
+    openedAt: null,
+    openedBy: null,
+    useByOn: null,
+    discardedAt: null,
+    discardedReason: null,
     ...more,
   });

@@ -27,6 +27,7 @@ import { createCalibrationEvidence } from './20261208090500-create-calibration-e
 import { createDeviceCommands } from './20261208090600-create-device-commands.ts';
 import { createPrompts } from './20261208090700-create-prompts.ts';
 import { announceDeviceCommands } from './20261208090800-announce-device-commands.ts';
+import { describeLots } from './20261208091000-describe-lots.ts';
 
 export const migrations: readonly Migration[] = [
   createUsers,
@@ -56,4 +57,5 @@ export const migrations: readonly Migration[] = [
   createDeviceCommands,
   createPrompts,
   announceDeviceCommands,
+  describeLots,
 ];

@@ -7,6 +7,7 @@ import {
   type NonAttribute,
   type Sequelize,
 } from 'sequelize';
+import type { Preparation } from '../../../shared/contracts/preparations.ts';
 import {
   standardBases,
   standardMedia,
@@ -40,9 +41,13 @@ export class Standard extends Model<InferAttributes<Standard>, InferCreationAttr
   declare stateReason: string | null;
   declare stateChangedAt: Date | null;
   declare createdAt: CreationOptional<Date>;
-  declare openedLifeDays: number | null;
+  declare openedLifeDays: CreationOptional<number | null>;
+  declare storage: CreationOptional<string>;
+  declare coverageProbabilityPercent: CreationOptional<number | null>;
+  /** How an in-house lot was made: readings, value and budget; written once, with the lot. */
+  declare preparation: CreationOptional<Preparation | null>;
   declare version: CreationOptional<number>;
-  declare certificateId: number | null;
+  declare certificateId: CreationOptional<number | null>;
 
   declare checks?: NonAttribute<Check[]>;
 }
@@ -71,6 +76,9 @@ export function initStandard(sequelize: Sequelize): void {
       stateChangedAt: DataTypes.DATE,
       createdAt: DataTypes.DATE,
       openedLifeDays: DataTypes.INTEGER,
+      storage: DataTypes.TEXT,
+      coverageProbabilityPercent: DataTypes.DOUBLE,
+      preparation: DataTypes.JSONB,
       version: versionColumn(),
       certificateId: DataTypes.INTEGER,
     },

@@ -2,6 +2,7 @@ import type { Session } from '../../../shared/contracts/sessions.ts';
 import type { Actor } from '../../http/actor.ts';
 import { may, maySomewhere } from '../../http/authorise.ts';
 import { auditEventPolicy } from '../audit-events/policy.ts';
+import { instrumentPolicy } from '../instruments/policy.ts';
 import { mailPolicy } from '../mails/policy.ts';
 import { pointPolicy } from '../points/policy.ts';
 import { probePolicy } from '../probes/policy.ts';
@@ -32,5 +33,7 @@ export const presentSession = (actor: Actor, grants: GrantRow[], startedAt: stri
     createPoint: maySomewhere(pointPolicy, 'create', actor),
     registerProbe: maySomewhere(probePolicy, 'register', actor),
     createStandard: maySomewhere(standardPolicy, 'create', actor),
+    prepareStandard: maySomewhere(standardPolicy, 'prepare', actor),
+    createInstrument: maySomewhere(instrumentPolicy, 'create', actor),
   },
 });

@@ -6,28 +6,41 @@ import type {
   ChangeStandardState,
   CreateStandard,
   StandardsQuery,
+  StandardUses,
 } from '../../../shared/contracts/standards.ts';
+import type { AttachCertificate } from '../../../shared/contracts/certificates.ts';
 import type { ListOf } from '../../../shared/contracts/common.ts';
 import type { StandardState } from '../../../shared/contracts/vocabulary.ts';
 import { Standard } from '../../db/models/index.ts';
 import { inTransaction } from '../../db/transaction.ts';
 import { refusingByConstraint } from '../../db/violations.ts';
 import { AppError } from '../../errors.ts';
-import type { Actor } from '../../http/actor.ts';
+import { readableSites, type Actor } from '../../http/actor.ts';
 import { maySomewhere } from '../../http/authorise.ts';
 import { pageOf, readCursor } from '../../http/paging.ts';
 import { containsPattern } from '../../lib/text-pattern.ts';
 import type { Parts } from '../../parts.ts';
 import { recordAuditEvent } from '../audit-events/service.ts';
+import { requireCertificate } from '../certificates/service.ts';
 import { standardPolicy } from './policy.ts';
-import { countStandards, selectStandards, type StandardRow } from './queries.ts';
+import {
+  countBottlesOfLot,
+  countStandards,
+  selectDerivedLots,
+  selectProbeUses,
+  selectStandards,
+  selectStateChanges,
+  type ProbeUseRow,
+  type StandardRow,
+  type StateChangeRow,
+} from './queries.ts';
 
-const codeTaken = {
+export const lotCodeTaken = {
   standards_code_key: 'standards.code-taken',
   standards_code_lower_key: 'standards.code-taken',
 } as const;
 
-function authoriseSomewhere(actor: Actor, action: keyof typeof standardPolicy): void {
+export function authoriseSomewhere(actor: Actor, action: keyof typeof standardPolicy): void {
   if (!maySomewhere(standardPolicy, action, actor)) throw new AppError('standards.forbidden');
 }
 
@@ -63,7 +76,7 @@ export async function createStandard(
   input: CreateStandard,
 ): Promise<StandardRow> {
   authoriseSomewhere(actor, 'create');
-  const id = await refusingByConstraint(codeTaken, () =>
+  const id = await refusingByConstraint(lotCodeTaken, () =>
     inTransaction(parts.sequelize, async (transaction) => {
       const lot = await Standard.create(
         { ...input, ...onArrival, stateChangedAt: parts.clock.now() },
@@ -121,4 +134,62 @@ export async function changeStandardState(
     transaction.afterCommit(() => parts.broadcast.changed({ slice: 'standards', id, kind: 'changed' }, null));
   });
   return readStandard(parts, actor, id);
+}
+
+/** What the certificate says is fixed; the file that shows it may come later, or be replaced by a better scan. */
+export async function attachCertificate(
+  parts: Parts,
+  actor: Actor,
+  id: number,
+  { certificateId, reason }: AttachCertificate,
+): Promise<StandardRow> {
+  authoriseSomewhere(actor, 'attachCertificate');
+  await inTransaction(parts.sequelize, async (transaction) => {
+    const lot = await Standard.findByPk(id, { transaction, lock: transaction.LOCK.UPDATE });
+    if (!lot) throw new AppError('standards.not-found');
+    const file = await requireCertificate(transaction, certificateId);
+    const before = lot.certificateId ?? null;
+    if (before === certificateId) return;
+    await lot.update({ certificateId }, { transaction });
+    await recordAuditEvent(parts, transaction, actor, {
+      action: 'standards.certificate-attached',
+      objectKind: 'standards',
+      objectId: id,
+      objectVersion: lot.version,
+      siteId: null,
+      oldValue: { certificateId: before },
+      newValue: { certificateId, sha256: file.sha256, fileName: file.fileName },
+      reason,
+    });
+    transaction.afterCommit(() => parts.broadcast.changed({ slice: 'standards', id, kind: 'changed' }, null));
+  });
+  return readStandard(parts, actor, id);
+}
+
+export async function listStateChanges(parts: Parts, actor: Actor, id: number): Promise<StateChangeRow[]> {
+  await readStandard(parts, actor, id);
+  return selectStateChanges(parts, id);
+}
+
+export interface LotUses extends Omit<StandardUses, 'probes'> {
+  probes: ProbeUseRow[];
+}
+
+const sum = (values: readonly number[]): number => values.reduce((total, value) => total + value, 0);
+
+/** Everything that rests on a lot, at the sites the actor may read: what a recall would touch. */
+export async function readUses(parts: Parts, actor: Actor, id: number): Promise<LotUses> {
+  await readStandard(parts, actor, id);
+  const [probes, derivedLots, bottles] = await Promise.all([
+    selectProbeUses(parts, id, readableSites(actor)),
+    selectDerivedLots(parts, id),
+    countBottlesOfLot(parts, id),
+  ]);
+  const ifRecalled = {
+    checkCount: sum(probes.map((probe) => probe.checkCount)),
+    calibrationCount: sum(probes.map((probe) => probe.calibrationCount)),
+    probeCount: probes.length,
+    probesWithoutOtherEvidence: probes.filter((probe) => probe.restsOnThisLot).length,
+  };
+  return { probes, derivedLots, bottles, ifRecalled };
 }
