@@ -8,7 +8,7 @@ export interface FieldChange {
   field: string;
   /** Null where there was nothing before. */
   from: string | null;
-  /** Null where nothing is left. */
+  /** Null where the entry says only what it was before. */
   to: string | null;
 }
 
@@ -69,10 +69,14 @@ export function deedWords(event: AuditEventView): string {
   const deed = labelOf(ACTION_WORDS, event.action);
   const isOwn = event.objectKind === 'users' && event.objectId === String(event.actorId);
   if (isOwn || event.objectId === null || event.action.startsWith('sessions.')) return deed;
-  const thing = nameIn(event.newValue) ?? nameIn(event.oldValue) ?? numbered(event.objectId);
+  const known = NAMED.has(event.objectKind) ? (nameIn(event.newValue) ?? nameIn(event.oldValue)) : null;
+  const thing = known ?? numbered(event.objectId);
   const isWorded = ACTION_WORDS[event.action] !== undefined;
   return isWorded ? `${deed} ${thing}` : `${deed}: ${labelOf(OBJECT_WORDS, event.objectKind)} ${thing}`;
 }
+
+/** Kinds whose entries carry the name of the thing itself. */
+const NAMED = new Set(['sites', 'areas', 'points', 'probes', 'standards', 'users']);
 
 const numbered = (id: string) => (/^\d+$/.test(id) ? `no. ${id}` : `“${id}”`);
 

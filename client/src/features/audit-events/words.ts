@@ -58,26 +58,25 @@ export const OBJECT_WORDS: Readonly<Record<string, string>> = {
   notices: 'integrity notice',
 };
 
-/** Units by the ending of a field's name, longest first. */
-const UNIT_ENDINGS: readonly [ending: string, unit: string][] = [
-  ['PercentPerK', '%/K'],
-  ['Percent', '%'],
-  ['PerCm', 'cm⁻¹'],
-  ['UsCm', 'µS/cm'],
-  ['Days', 'days'],
-  ['TemperatureC', '°C'],
-  ['UncertaintyC', 'K'],
+/** Units by the ending of a field's name, longest first; what is kept of the ending belongs to the name. */
+const UNIT_ENDINGS: readonly [ending: RegExp, kept: string, unit: string][] = [
+  [/PercentPerK$/, '', '%/K'],
+  [/Percent$/, '', '%'],
+  [/PerCm$/, '', 'cm⁻¹'],
+  [/UsCm$/, '', 'µS/cm'],
+  [/Days$/, '', 'days'],
+  [/UncertaintyC$/, 'Uncertainty', 'K'],
+  [/([Tt]emperature)C$/, '$1', '°C'],
 ];
 
-/** A field's name as people say it, and the unit its name carries: `cellConstantPerCm` → cell constant, cm⁻¹. */
+/** A field's name as people say it, and the unit its name carries: `cellConstantPerCm` is cell constant in cm⁻¹. */
 export function fieldWords(path: string): { name: string; unit: string | null } {
-  const found = UNIT_ENDINGS.find(([ending]) => path.endsWith(ending));
-  const kept = found && found[0].endsWith('C') && found[0] !== 'PerCm' ? path.slice(0, -1) : path;
-  const bare = found && kept === path && found[0] !== 'Days' ? path.slice(0, -found[0].length) : kept;
+  const found = UNIT_ENDINGS.find(([ending]) => ending.test(path));
+  const bare = found ? path.replace(found[0], found[1]) : path;
   const name = bare
     .replace(/([a-z0-9])([A-Z])/g, '$1 $2')
     .replace(/[._-]/g, ' ')
     .toLowerCase()
     .trim();
-  return { name: name || path, unit: found?.[1] ?? null };
+  return { name: name || path, unit: found?.[2] ?? null };
 }

@@ -8,6 +8,7 @@ import { NameCell } from '../../../components/ui/figure.tsx';
 import type { LedgerColumn } from '../../../components/ui/ledger-parts.tsx';
 import { PhoneRow } from '../../../components/ui/ledger-parts.tsx';
 import { paths } from '../../../paths.ts';
+import type { FieldChange } from '../model.ts';
 import { actorWords, deedWords, fieldChanges, receivedLater } from '../model.ts';
 
 export const AUDIT_COLUMNS: LedgerColumn<AuditEventView>[] = [
@@ -89,14 +90,7 @@ function Changes({ event }: { event: AuditEventView }) {
           <div key={change.field}>
             <dt>{change.field}</dt>
             <dd>
-              {change.from === null ? null : (
-                <>
-                  <del>{change.from}</del>
-                  <span aria-hidden="true"> → </span>
-                  <span className="sr-only"> became </span>
-                </>
-              )}
-              {change.to === null ? <em>taken away</em> : <ins>{change.to}</ins>}
+              <ChangedValue {...change} />
             </dd>
           </div>
         ))}
@@ -106,6 +100,22 @@ function Changes({ event }: { event: AuditEventView }) {
           {isWhole ? 'Show fewer' : `Show all ${changes.length}`}
         </Button>
       ) : null}
+    </>
+  );
+}
+
+function ChangedValue({ from, to }: FieldChange) {
+  if (to === null) return <span className="is-faint">{from}, before</span>;
+  return (
+    <>
+      {from === null ? null : (
+        <>
+          <del>{from}</del>
+          <span aria-hidden="true"> → </span>
+          <span className="sr-only"> became </span>
+        </>
+      )}
+      <ins>{to}</ins>
     </>
   );
 }
