@@ -1,5 +1,9 @@
-import type { z } from 'zod';
+import { z } from 'zod';
+import { plainMessage } from '../../shared/contracts/messages.ts';
 import { AppError } from '../errors.ts';
+
+/** Every refusal is read by a person: the library's own wording is for programmers. */
+z.config({ customError: plainMessage });
 
 /** Parses one part of a request; every issue is answered with its path. */
 export function parsePart(
