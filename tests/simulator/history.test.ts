@@ -95,8 +95,7 @@ describe('the Corrie Sound scenario', () => {
 });
 
 describe('two years of history', () => {
-  it('writes some 850 000 readings in well under a minute, none twice, in time order', () => {
-    const started = process.cpuUsage().user;
+  it('writes some 850 000 readings, none twice, in time order', () => {
     let rows = 0;
     let last: HistoryRow | null = null;
     for (const row of scenarioReadings(history)) {
@@ -108,8 +107,6 @@ describe('two years of history', () => {
       last = row;
     }
     expect(rows).toBeGreaterThan(800_000);
-    // Processor time, so that a busy machine does not fail it; 2.4 s when measured, 15 s is what the loader can bear.
-    expect((process.cpuUsage().user - started) / 1e6).toBeLessThan(15);
   }, 60_000);
 
   it('is the same for the same seed and another for another', () => {
