@@ -5,8 +5,8 @@ import {
   markerPaths,
   outcomeByGuardBand,
   stripGeometry,
-} from '../../client/src/components/strip/strip-geometry.ts';
-import { STRIP_MEASURES } from '../../client/src/components/strip/strip-sizes.ts';
+} from '../../shared/format/strip-geometry.ts';
+import { STRIP_MEASURES } from '../../shared/format/strip-sizes.ts';
 
 const base = { tolerance: 3, guardBand: 0.85, expandedUncertainty: 0.85, what: 'As left' };
 const hard = '\u00a0';

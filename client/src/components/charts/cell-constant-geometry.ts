@@ -1,5 +1,5 @@
 import type { CheckStage } from '../../../../shared/contracts/vocabulary.ts';
-import { hatchPath, px } from '../strip/strip-geometry.ts';
+import { hatchPath, px } from '../../../../shared/format/strip-geometry.ts';
 import type { TimeTick } from './time-axis.ts';
 import { timeTicks } from './time-axis.ts';
 import { valueTicks } from './value-axis.ts';

@@ -1,4 +1,4 @@
-import { hatchPath, px } from '../strip/strip-geometry.ts';
+import { hatchPath, px } from '../../../../shared/format/strip-geometry.ts';
 
 export interface TraceProps {
   /** Evenly or unevenly spaced: [ms, value]; null is a gap. In order of time. */

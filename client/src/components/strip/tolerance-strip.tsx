@@ -1,9 +1,9 @@
 import { useLayoutEffect, useRef } from 'react';
 import type { Outcome } from '../../../../shared/contracts/vocabulary.ts';
 import { useIsNarrow } from '../../lib/use-width.ts';
-import type { StripGeometry, StripInput, StripResult } from './strip-geometry.ts';
-import { stripGeometry } from './strip-geometry.ts';
-import type { StripSize } from './strip-sizes.ts';
+import type { StripGeometry, StripInput, StripResult } from '../../../../shared/format/strip-geometry.ts';
+import { stripGeometry } from '../../../../shared/format/strip-geometry.ts';
+import type { StripSize } from '../../../../shared/format/strip-sizes.ts';
 
 export interface ToleranceStripProps extends StripInput {
   /** row 120 × 20 in ledgers, page 640 × 72, bench 360 × 120. */

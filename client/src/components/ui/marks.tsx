@@ -1,7 +1,7 @@
 import type { ReactNode } from 'react';
 import type { Outcome, TrustLevel } from '../../../../shared/contracts/vocabulary.ts';
 import { OUTCOME_LABELS, TRUST_LABELS } from '../../../../shared/format/labels.ts';
-import { markerPaths } from '../strip/strip-geometry.ts';
+import { markerPaths } from '../../../../shared/format/strip-geometry.ts';
 import { OUTCOME_COLOUR, OutcomeShape } from '../strip/tolerance-strip.tsx';
 import { classNames } from './button.tsx';
 

@@ -3,7 +3,7 @@ import type { Outcome } from '../../../../shared/contracts/vocabulary.ts';
 import { listInWords } from '../../../../shared/format/labels.ts';
 import type { ValueWithUncertainty } from '../../../../shared/format/numbers.ts';
 import { formatNumber, formatWithUncertainty, NO_BREAK_SPACE } from '../../../../shared/format/numbers.ts';
-import type { StripInput } from '../../components/strip/strip-geometry.ts';
+import type { StripInput } from '../../../../shared/format/strip-geometry.ts';
 
 /** What stands in the fields, by name: a number as its shortest text, a choice as its code. */
 export type Values = Readonly<Record<string, string>>;

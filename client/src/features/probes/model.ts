@@ -14,7 +14,7 @@ import {
   formatSigned,
   uncertaintyPlace,
 } from '../../../../shared/format/numbers.ts';
-import type { StripInput } from '../../components/strip/strip-geometry.ts';
+import type { StripInput } from '../../../../shared/format/strip-geometry.ts';
 
 /** The name a page about a probe carries: where it stands, else its tag. */
 export function probeName(probe: Pick<ProbeRow, 'placement' | 'tag'>): string {

@@ -4,7 +4,7 @@ import type { ReadingContext } from '../../../../shared/contracts/vocabulary.ts'
 import { capitalise, DISPLAY_UNIT_LABELS, PROBE_KIND_LABELS } from '../../../../shared/format/labels.ts';
 import type { ValueWithUncertainty } from '../../../../shared/format/numbers.ts';
 import { formatConductivity } from '../../../../shared/format/numbers.ts';
-import type { StripInput } from '../../components/strip/strip-geometry.ts';
+import type { StripInput } from '../../../../shared/format/strip-geometry.ts';
 import type { QuantityProps } from '../../components/ui/figure.tsx';
 import type { LedgerRowState } from '../../components/ui/ledger-parts.tsx';
 import { paths } from '../../paths.ts';

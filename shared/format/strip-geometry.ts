@@ -1,10 +1,5 @@
-import type { Outcome } from '../../../../shared/contracts/vocabulary.ts';
-import {
-  formatNumber,
-  formatWithUncertainty,
-  MINUS,
-  NO_BREAK_SPACE,
-} from '../../../../shared/format/numbers.ts';
+import type { Outcome } from '../contracts/vocabulary.ts';
+import { formatNumber, formatWithUncertainty, MINUS, NO_BREAK_SPACE } from './numbers.ts';
 import type { StripMeasures, StripSize } from './strip-sizes.ts';
 import { STRIP_MEASURES } from './strip-sizes.ts';
 import { stripWords } from './strip-words.ts';

@@ -1,6 +1,6 @@
-import type { Outcome } from '../../../../shared/contracts/vocabulary.ts';
-import { capitalise, OUTCOME_LABELS } from '../../../../shared/format/labels.ts';
-import { formatNumber, formatSigned, uncertaintyPlace } from '../../../../shared/format/numbers.ts';
+import type { Outcome } from '../contracts/vocabulary.ts';
+import { capitalise, OUTCOME_LABELS } from './labels.ts';
+import { formatNumber, formatSigned, uncertaintyPlace } from './numbers.ts';
 import type { StripInput } from './strip-geometry.ts';
 
 /**
