@@ -6,6 +6,7 @@ import { ErrorBoundary } from '../components/ui/error-boundary.tsx';
 import { LoadingFace } from '../components/ui/faces.tsx';
 import { Switcher } from '../components/ui/switcher.tsx';
 import { ThemeToggle } from '../components/ui/theme-toggle.tsx';
+import { usePhoneQueue } from '../features/calibrations/offline/phone-queue.ts';
 import { GlobalSearch } from '../features/search/components/global-search.tsx';
 import { useSignOut } from '../features/sessions/api.ts';
 import { RequireSession } from '../features/sessions/components/require-session.tsx';
@@ -27,13 +28,18 @@ export function SignedInLayout() {
 
 function Shell() {
   const session = useSession();
+  // What was captured without network goes up from any page, not only from the bench.
+  usePhoneQueue(session.user.id);
   const { pathname } = useLocation();
   const siteId = useSiteInView();
   const sites = useQuery(sitesList()).data?.items ?? [];
   const signOut = useSignOut();
   const navigate = useNavigate();
-  const leave = () =>
-    signOut.mutate({ isEverywhere: false }, { onSuccess: () => void navigate(paths.signIn.to()) });
+  const leave = async () => {
+    await signOut.mutateAsync({ isEverywhere: false });
+    // Whoever signs in next begins at the start, not where this person was.
+    await navigate(paths.signIn.to(), { replace: true });
+  };
   return (
     <AppShell
       home={paths.live.to()}
@@ -45,7 +51,7 @@ function Shell() {
         role: roleWords(session, siteId),
         items: [
           { label: 'Your account', hint: session.user.email, to: paths.account.to() },
-          { label: 'Sign out', onSelect: leave },
+          { label: 'Sign out', onSelect: () => void leave() },
         ],
       }}
       personFoot={<ThemeToggle />}

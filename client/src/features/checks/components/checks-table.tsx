@@ -10,7 +10,7 @@ import {
 } from '../../../../../shared/format/labels.ts';
 import { formatNumber, formatWithUncertainty } from '../../../../../shared/format/numbers.ts';
 import { Button } from '../../../components/ui/button.tsx';
-import { EmptyFace, FailedFace, LoadingFace } from '../../../components/ui/faces.tsx';
+import { FailedFace, LoadingFace } from '../../../components/ui/faces.tsx';
 import { Figure, NameCell } from '../../../components/ui/figure.tsx';
 import type { LedgerColumn } from '../../../components/ui/ledger-parts.tsx';
 import { PhoneRow } from '../../../components/ui/ledger-parts.tsx';
@@ -33,6 +33,8 @@ export function ChecksTable({ probeId, timeZone }: { probeId: number; timeZone: 
     setMost(most + MORE_ROWS);
     if (all.length < most + MORE_ROWS && query.hasNextPage) await query.fetchNextPage();
   };
+  // The page says already that the probe was never compared.
+  if (query.data && total === 0) return null;
   return (
     <section>
       <SectionTitle note={noteFor(total)}>Comparisons</SectionTitle>
@@ -52,11 +54,6 @@ export function ChecksTable({ probeId, timeZone }: { probeId: number; timeZone: 
           rowKey={(check) => check.id}
           isHeadSticky={false}
           phone={(check) => <CheckPhoneRow check={check} timeZone={timeZone} />}
-          empty={
-            <EmptyFace title="Never compared yet.">
-              A reading taken in a registered reference solution makes the first one.
-            </EmptyFace>
-          }
         />
       ) : null}
       {rows.length < total ? (

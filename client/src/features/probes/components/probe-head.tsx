@@ -1,6 +1,6 @@
 import type { ReactNode } from 'react';
 import type { Probe } from '../../../../../shared/contracts/probes.ts';
-import { PROBE_STATUS_LABELS } from '../../../../../shared/format/labels.ts';
+import { formatDate } from '../../../../../shared/format/dates.ts';
 import { TrustMark } from '../../../components/ui/marks.tsx';
 import { Crumbs } from '../../../components/ui/page-head.tsx';
 import { useDocumentTitle } from '../../../lib/use-document-title.ts';
@@ -34,7 +34,7 @@ export function ProbeHead({ probe, isHeld, reading, actions }: ProbeHeadProps) {
           <p className="probe-say">
             {probe.status === 'retired' ? (
               <>
-                <b>{PROBE_STATUS_LABELS.retired}.</b> {probe.retiredReason}
+                <b>Retired on {formatDate(probe.retiredAt)}:</b> {probe.retiredReason}
               </>
             ) : (
               <>

@@ -8,7 +8,7 @@ import { formatConductivity, formatNumber } from '../../../../../shared/format/n
 import { LazyTimeSeriesChart } from '../../../components/charts/lazy-time-series-chart.tsx';
 import type { SeriesLimit } from '../../../components/charts/series-model.ts';
 import { Answer } from '../../../components/ui/answer.tsx';
-import { LoadingFace } from '../../../components/ui/faces.tsx';
+import { EmptyFace, LoadingFace } from '../../../components/ui/faces.tsx';
 import { SectionTitle } from '../../../components/ui/page-head.tsx';
 import { useNow } from '../../../components/ui/time.tsx';
 import { useLiveReadings } from '../../../lib/live-readings.ts';
@@ -40,7 +40,20 @@ export interface ReadingChartProps {
 }
 
 /** Readings of one probe, live and over two years, at most 1 000 points at a time. */
-export function ReadingChart({ probeId, name, reading, timeZone, point }: ReadingChartProps) {
+export function ReadingChart(props: ReadingChartProps) {
+  const hasLive = useLiveReadings(props.probeId).length > 0;
+  if (props.reading || hasLive) return <Chart {...props} />;
+  return (
+    <section>
+      <SectionTitle>Reading</SectionTitle>
+      <EmptyFace title="Never heard.">
+        The first reading that its device sends opens this chart, without reloading the page.
+      </EmptyFace>
+    </section>
+  );
+}
+
+function Chart({ probeId, name, reading, timeZone, point }: ReadingChartProps) {
   const [view, setView] = useState<View>({ kind: 'following', spanMs: FIRST_SPAN_MS });
   const now = useNow();
   const shown = periodShown(view, now);
@@ -68,21 +81,26 @@ export function ReadingChart({ probeId, name, reading, timeZone, point }: Readin
         loading={<LoadingFace label="Fetching the readings" rows={1} rowHeight={270} />}
       >
         {() => (
-          <LazyTimeSeriesChart
-            label={`Reading of ${name}`}
-            unit={unit}
-            decimals={decimalsFor(reading, unit)}
-            points={points}
-            live={liveData}
-            from={shown.from}
-            to={shown.to}
-            now={now}
-            limits={limits}
-            timeZone={timeZone}
-            height={210}
-            ranges={RANGES}
-            onRangeChange={(from, to) => setView(viewOf({ from, to }, now))}
-          />
+          <>
+            {points.length + liveData.length === 0 ? (
+              <p className="chart-empty">No reading was received in this period.</p>
+            ) : null}
+            <LazyTimeSeriesChart
+              label={`Reading of ${name}`}
+              unit={unit}
+              decimals={decimalsFor(reading, unit)}
+              points={points}
+              live={liveData}
+              from={shown.from}
+              to={shown.to}
+              now={now}
+              limits={limits}
+              timeZone={timeZone}
+              height={210}
+              ranges={RANGES}
+              onRangeChange={(from, to) => setView(viewOf({ from, to }, now))}
+            />
+          </>
         )}
       </Answer>
     </section>
