@@ -52,6 +52,11 @@ export const paths = {
   newPoint: address('/points/new'),
   point: address('/points/:id'),
 
+  calibrations: address('/calibrations'),
+  startCalibration: address('/calibrations/start'),
+  reviewCalibrations: address('/calibrations/review'),
+  calibration: address('/calibrations/:id'),
+
   standards: address('/standards'),
   calculator: address('/standards/calculator'),
   newStandard: address('/standards/new'),

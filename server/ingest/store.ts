@@ -177,6 +177,8 @@ function livePoint(candidate: ReadingCandidate, directory: DeviceDirectory): Liv
     context: reading.context,
     quality: reading.quality,
     flags: [...reading.flags],
+    boot: candidate.boot,
+    n: reading.n,
   };
 }
 

@@ -16,6 +16,9 @@ export interface LivePoint {
   context: string;
   quality: string;
   flags: string[];
+  /** Which reading of the device this is, for a capture that names it. */
+  boot?: string;
+  n?: number;
 }
 export interface ReadingsUpdate {
   probe: number;

@@ -69,6 +69,21 @@ export const http = {
     request<T>('DELETE', path, body, options),
 };
 
+/** One exchange as clocks saw it: the server's `Date` header, and this device's time around it, ms. */
+export interface ServerDate {
+  serverMs: number;
+  sentMs: number;
+  receivedMs: number;
+}
+
+const dateListeners = new Set<(date: ServerDate) => void>();
+
+/** Hear the server's clock with every answer; whoever captures readings compares it with this device's own. */
+export function listenToServerDates(listener: (date: ServerDate) => void): () => void {
+  dateListeners.add(listener);
+  return () => dateListeners.delete(listener);
+}
+
 /** Path and query as one address; empty values are left out, lists repeat their key. */
 export function withQuery(path: string, query: RequestOptions['query'] = {}): string {
   const pairs = new URLSearchParams();
@@ -86,9 +101,12 @@ async function request<T>(method: string, path: string, body: unknown, options: 
     credentials: 'same-origin',
     headers: {
       accept: 'application/json, application/problem+json',
-      ...(body === undefined ? {} : { 'content-type': 'application/json' }),
+      // A file goes as it is, under its own type; everything else is JSON.
+      ...(body === undefined
+        ? {}
+        : { 'content-type': body instanceof Blob ? body.type : 'application/json' }),
     },
-    ...(body === undefined ? {} : { body: JSON.stringify(body) }),
+    ...(body === undefined ? {} : { body: body instanceof Blob ? body : JSON.stringify(body) }),
     ...(options.signal ? { signal: options.signal } : {}),
   });
   const content = await readJson(response);
@@ -101,13 +119,22 @@ async function request<T>(method: string, path: string, body: unknown, options: 
 }
 
 async function reach(address: string, init: RequestInit): Promise<Response> {
+  const sentMs = Date.now();
   try {
-    return await fetch(address, init);
+    const response = await fetch(address, init);
+    tellServerDate(response.headers.get('date'), sentMs);
+    return response;
   } catch (error) {
     // A request that was taken back is no failure; the query client knows what to do with it.
     if (error instanceof DOMException && error.name === 'AbortError') throw error;
     throw new NetworkFailure(error);
   }
+}
+
+function tellServerDate(header: string | null, sentMs: number): void {
+  const serverMs = Date.parse(header ?? '');
+  if (Number.isNaN(serverMs)) return;
+  for (const listener of dateListeners) listener({ serverMs, sentMs, receivedMs: Date.now() });
 }
 
 async function readJson(response: Response): Promise<unknown> {

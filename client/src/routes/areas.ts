@@ -16,6 +16,7 @@ export function areasFor(session: Session, siteId: number | null): RailArea[] {
       to: paths.probes.to({ siteId }),
       under: [paths.probes.pattern, paths.points.pattern],
     },
+    { label: 'Calibrations', to: paths.calibrations.to() },
     { label: 'Reference solutions', to: paths.standards.to() },
     ...(session.can.readAudit
       ? [{ label: 'Records', to: paths.auditTrail.to(), under: [paths.records.pattern] }]
