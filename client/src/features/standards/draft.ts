@@ -14,6 +14,7 @@ export interface LotDraft {
   certifiedConductivityUsCm: number | null;
   expandedUncertaintyUsCm: number | null;
   coverageFactor: number | null;
+  coverageProbabilityPercent: number | null;
   referenceTemperatureC: number | null;
   /** One row a line: temperature, then conductivity, as pasted from the certificate. */
   temperatureTable: string;
@@ -21,6 +22,8 @@ export interface LotDraft {
   isInHouse: boolean;
   issuedOn: string;
   expiresOn: string;
+  openedLifeDays: number | null;
+  storage: string;
 }
 
 export const EMPTY_LOT: LotDraft = {
@@ -33,12 +36,15 @@ export const EMPTY_LOT: LotDraft = {
   certifiedConductivityUsCm: null,
   expandedUncertaintyUsCm: null,
   coverageFactor: 2,
+  coverageProbabilityPercent: null,
   referenceTemperatureC: 25,
   temperatureTable: '',
   traceability: '',
   isInHouse: false,
   issuedOn: '',
   expiresOn: '',
+  openedLifeDays: null,
+  storage: '',
 };
 
 export type TemperatureRow = NonNullable<CreateStandard['temperatureTable']>[number];
@@ -75,7 +81,13 @@ export function lotIssues(draft: LotDraft): Issues {
   ];
   const issues: Record<string, string> = {};
   for (const [key, says] of texts) if (!String(draft[key]).trim()) issues[key] = says;
-  const numbers = ['certifiedConductivityUsCm', 'expandedUncertaintyUsCm', 'coverageFactor'] as const;
+  const numbers = [
+    'certifiedConductivityUsCm',
+    'expandedUncertaintyUsCm',
+    'coverageFactor',
+    'coverageProbabilityPercent',
+    'openedLifeDays',
+  ] as const;
   for (const key of numbers) if (Number.isNaN(draft[key])) issues[key] = 'Write a number, or leave it empty.';
   const reference = draft.referenceTemperatureC;
   if (reference === null || Number.isNaN(reference))
@@ -93,7 +105,6 @@ export function contentOfLot(draft: LotDraft): CreateStandard {
   return {
     ...draft,
     nominal: isByBasis && draft.nominal ? (Number(draft.nominal) as 0.01 | 0.1 | 1) : null,
-    expandedUncertaintyUsCm: draft.expandedUncertaintyUsCm,
     coverageFactor: hasValue || draft.expandedUncertaintyUsCm !== null ? draft.coverageFactor : null,
     referenceTemperatureC: draft.referenceTemperatureC ?? Number.NaN,
     temperatureTable: rows.length > 0 ? rows : null,

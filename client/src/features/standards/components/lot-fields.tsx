@@ -114,7 +114,7 @@ export function CertificateFields(props: LotFieldsProps) {
     </Field>
   );
   const number = (key: NumberKey, label: string, unit: string | undefined, hint?: string) => (
-    <Field label={label} hint={hint} error={issueFor(key)}>
+    <Field label={label} hint={hint} isOptional={MAY_BE_EMPTY.has(key)} error={issueFor(key)}>
       <NumberInput unit={unit} value={draft[key]} onChange={(value) => set(key, value)} />
     </Field>
   );
@@ -134,6 +134,12 @@ export function CertificateFields(props: LotFieldsProps) {
         {number('expandedUncertaintyUsCm', 'Expanded uncertainty U', 'µS/cm', 'In µS/cm, not in per cent.')}
         {number('coverageFactor', 'Coverage factor k', undefined, 'Often 2.')}
       </div>
+      {number(
+        'coverageProbabilityPercent',
+        'Coverage probability',
+        '%',
+        'Where the certificate states one, often about 95; else leave it empty.',
+      )}
       <Field label="Temperature table" isOptional hint={tableHint} error={issueFor('temperatureTable')}>
         <Textarea
           rows={5}
@@ -159,9 +165,27 @@ export function CertificateFields(props: LotFieldsProps) {
         {day('issuedOn', 'Issued')}
         {day('expiresOn', 'Last day of use')}
       </div>
+      <div className="form-pair">
+        {number(
+          'openedLifeDays',
+          'Opened bottles may be used for',
+          'days',
+          'Empty: until the last day of the lot.',
+        )}
+        <Field label="Storage" isOptional error={issueFor('storage')}>
+          <TextInput
+            value={draft.storage}
+            maxLength={400}
+            placeholder="15 to 25 °C, dark"
+            onChange={(event) => set('storage', event.target.value)}
+          />
+        </Field>
+      </div>
     </>
   );
 }
 
 type NumberKey =
   'certifiedConductivityUsCm' | 'referenceTemperatureC' | 'expandedUncertaintyUsCm' | 'coverageFactor';
+
+const MAY_BE_EMPTY: ReadonlySet<NumberKey> = new Set(['coverageProbabilityPercent', 'openedLifeDays']);

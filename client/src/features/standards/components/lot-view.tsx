@@ -75,6 +75,14 @@ function CertificateFacts({ lot }: { lot: Standard }) {
         { term: 'Traceability', value: lot.traceability },
         { term: 'Issued', value: formatDate(lot.issuedOn) },
         { term: 'Last day of use', value: formatDate(lot.expiresOn) },
+        {
+          term: 'After opening',
+          value:
+            lot.openedLifeDays === null
+              ? 'until its last day'
+              : formatNumber(lot.openedLifeDays, { decimals: 0, unit: 'days' }),
+        },
+        ...(lot.storage ? [{ term: 'Storage', value: lot.storage }] : []),
         { term: 'State since', value: formatDateTime(lot.stateChangedAt, { offset: true }) },
         { term: 'Reason of the state', value: lot.stateReason ?? 'none given' },
       ]}
