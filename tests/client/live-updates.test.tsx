@@ -84,3 +84,11 @@ it('refetches a slice once however many changes arrive in a frame, and no other 
   await waitFor(() => expect(isStale('probes')).toBe(true));
   expect(isStale('checks')).toBe(false);
 });
+
+it('a change of a device fetches again the probe that shows it', async () => {
+  const queryClient = new QueryClient();
+  await queryClient.fetchQuery({ queryKey: ['probes', 'detail', 7], queryFn: () => 'not connected' });
+  invalidateBySlice(queryClient)('devices');
+  const isStale = () => queryClient.getQueryState(['probes', 'detail', 7])?.isInvalidated;
+  await waitFor(() => expect(isStale()).toBe(true));
+});

@@ -102,12 +102,20 @@ export function useConnection(): { state: ConnectionState; since: number } {
   );
 }
 
+/** Answers that show another slice inside: a probe's page names its device and its last check, the board its trust. */
+const shownIn: Partial<Record<Slice, readonly Slice[]>> = {
+  devices: ['probes'],
+  checks: ['probes', 'readings'],
+  probes: ['readings'],
+  points: ['readings'],
+};
+
 /** Collects slices and invalidates each once with the next frame: a burst of changes is one refetch. */
 export function invalidateBySlice(queryClient: QueryClient): (slice: Slice) => void {
   const slices = new Set<Slice>();
   let isScheduled = false;
   return (slice) => {
-    slices.add(slice);
+    for (const one of [slice, ...(shownIn[slice] ?? [])]) slices.add(one);
     if (isScheduled) return;
     isScheduled = true;
     requestAnimationFrame(() => {
