@@ -3,6 +3,7 @@ import pg from 'pg';
 import type { Parts } from '../parts.ts';
 import { createAnnouncements } from './announcements.ts';
 import { openBroker, type Broker } from './broker.ts';
+import { openCommandDesk } from './command-desk.ts';
 import { createCommands, type CommandLine, type Commands } from './commands.ts';
 import { recordDeviceActivity } from './device-activity.ts';
 import { openDeviceDirectory, type DeviceDirectory } from './device-directory.ts';
@@ -59,6 +60,7 @@ export async function startIngest(parts: Parts, limits: IngestLimits = {}): Prom
     ? await outsideFront(parts, config.outsideBrokerUrl, intake)
     : await embeddedFront(parts, directory, intake, takeovers);
   line.connect(front.line);
+  const desk = await openCommandDesk(parts, commands);
   parts.health.push({
     name: 'broker',
     check: async () => {
@@ -76,6 +78,7 @@ export async function startIngest(parts: Parts, limits: IngestLimits = {}): Prom
     stop: async () => {
       await front.close();
       commands.stop();
+      await desk.stop();
       await intake.stop();
       await front.end();
       announcements.stop();

@@ -13,7 +13,7 @@ import { isSolutionStep } from './order.ts';
 import { announce, changeRun, momentOf, requirePerforming, type Run } from './runs.ts';
 import { requireCurrent } from './steps.ts';
 import { traceReading } from './stream.ts';
-import { lotOf } from './subject.ts';
+import { lotOf } from './lot.ts';
 
 const violated = { captures_key_key: 'calibrations.key-reused' } as const;
 

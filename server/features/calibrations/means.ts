@@ -5,7 +5,7 @@ import { AppError } from '../../errors.ts';
 import { readableSites, type Actor } from '../../http/actor.ts';
 import { refusingByScience } from '../calculations/service.ts';
 import { lotReferenceConductivity } from '../../../shared/science/certified-lots.ts';
-import { lotOf } from './subject.ts';
+import { lotOf } from './lot.ts';
 
 export interface Means {
   standard: Standard;

@@ -7,6 +7,7 @@ import type {
 import type { Actor } from '../../http/actor.ts';
 import { may } from '../../http/authorise.ts';
 import { labelOfLot } from '../standards/presenter.ts';
+import { lotOf } from './lot.ts';
 import { currentStepOf, stepsOfRun, type Decision } from './order.ts';
 import { calibrationPolicy } from './policy.ts';
 import type { ListedRun } from './queries.ts';
@@ -113,17 +114,20 @@ const presentSignatures = (run: Run): Calibration['signatures'] =>
     note: signature.note,
   }));
 
+const labelOf = (lot: Run['row']['standard']): string =>
+  labelOfLot({ ...lotOf(lot), product: lot.product, isInHouse: lot.isInHouse });
+
 function presentMeans({ row }: Run): Pick<Calibration, 'lot' | 'secondLot' | 'thermometer' | 'override'> {
   const { standard, secondStandard, thermometer, override } = row;
   return {
     lot: {
       id: standard.id,
       code: standard.code,
-      label: labelOfLot(standard),
+      label: labelOf(standard),
       bottleCode: row.bottle?.code ?? null,
     },
     secondLot: secondStandard
-      ? { id: secondStandard.id, code: secondStandard.code, label: labelOfLot(secondStandard) }
+      ? { id: secondStandard.id, code: secondStandard.code, label: labelOf(secondStandard) }
       : null,
     thermometer: thermometer
       ? {

@@ -2,27 +2,16 @@
 import { Op, type Transaction } from 'sequelize';
 import type { Judgement } from '../../../shared/contracts/calibrations.ts';
 import type { BudgetRow } from '../../../shared/contracts/checks.ts';
-import type { CertifiedLot } from '../../../shared/science/certified-lots.ts';
 import { Check, type Bottle, type Instrument, type Standard } from '../../db/models/index.ts';
 import { refusingByScience } from '../calculations/service.ts';
 import { readSetting } from '../settings/service.ts';
 import type { Circumstances, Solution } from './budget.ts';
+import { lotOf } from './lot.ts';
 import { judgeRun, type JudgeInput, type LastVisit } from './judge.ts';
 import { decisionOf, finishedOf, type Run } from './runs.ts';
 import { isSameConstant } from './same-constant.ts';
 
 const dayMs = 86_400_000;
-
-export const lotOf = (row: Standard): CertifiedLot => ({
-  medium: row.medium,
-  basis: row.basis,
-  nominal: row.nominal as CertifiedLot['nominal'],
-  certifiedConductivityUsCm: row.certifiedConductivityUsCm,
-  referenceTemperatureC: row.referenceTemperatureC,
-  expandedUncertaintyUsCm: row.expandedUncertaintyUsCm,
-  coverageFactor: row.coverageFactor,
-  temperatureTable: row.temperatureTable as CertifiedLot['temperatureTable'],
-});
 
 export const solutionOf = (row: Standard, bottle: Bottle | null, startedAt: Date): Solution => ({
   code: row.code,
