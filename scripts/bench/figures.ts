@@ -18,6 +18,8 @@ export interface Row {
   what: string;
   perSecond: number | null;
   latencies: Latencies | null;
+  /** Of the server, for each reading. */
+  coreUs: number | null;
   note: string;
 }
 
@@ -27,19 +29,20 @@ const ms = (value: number | undefined): string =>
   value === undefined ? '–' : value.toFixed(value < 10 ? 2 : 1);
 
 export function printTable(rows: readonly Row[]): void {
-  const head = ['what', 'per second', 'p50 ms', 'p99 ms', 'max ms', 'note'];
+  const head = ['what', 'per second', 'p50 ms', 'p99 ms', 'max ms', 'core µs', 'note'];
   const cells = rows.map((row) => [
     row.what,
     rate(row.perSecond),
     ms(row.latencies?.p50Ms),
     ms(row.latencies?.p99Ms),
     ms(row.latencies?.maxMs),
+    row.coreUs === null ? '–' : row.coreUs.toFixed(0),
     row.note,
   ]);
   const widths = head.map((title, i) => Math.max(title.length, ...cells.map((line) => line[i]!.length)));
   const line = (texts: readonly string[]): string =>
     texts
-      .map((text, i) => (i === 0 || i === 5 ? text.padEnd(widths[i]!) : text.padStart(widths[i]!)))
+      .map((text, i) => (i === 0 || i === 6 ? text.padEnd(widths[i]!) : text.padStart(widths[i]!)))
       .join('  ')
       .trimEnd();
   console.log(`\n${line(head)}\n${widths.map((width) => '─'.repeat(width)).join('  ')}`);

@@ -13,6 +13,7 @@ import {
   measureLatency,
   measureThroughput,
   pause,
+  warmUpMs,
   type BenchDevice,
 } from './load.ts';
 import { layPlant } from './plant.ts';
@@ -29,7 +30,7 @@ if (!told)
   throw new Error('Run the benchmark with `npm run bench`: it needs the database that this command starts.');
 const addresses = JSON.parse(told) as Addresses;
 
-const seconds = Number(process.argv[2] ?? 6);
+const seconds = Number(process.argv[2] ?? 8);
 const busyDevices = 50;
 const window = 20;
 const steadyDevices = 1000;
@@ -55,12 +56,15 @@ async function withProgram(program: Program, work: () => Promise<void>): Promise
 
 async function throughput(program: Program, what: string, readingsPerMessage: number): Promise<void> {
   const devices = await connectDevices(program.mqttUrl, names.slice(0, busyDevices));
-  const perSecond = await measureThroughput({ devices, window, seconds, readingsPerMessage });
+  const before = program.coreSeconds();
+  const { perSecond, total } = await measureThroughput({ devices, window, seconds, readingsPerMessage });
+  const coreUs = ((program.coreSeconds() - before) * 1e6) / total;
   const each = readingsPerMessage === 1 ? '' : `, ${readingsPerMessage} readings a message`;
   report({
     what,
     perSecond,
     latencies: null,
+    coreUs,
     note: `${busyDevices} devices, ${window} messages each on the way${each}`,
   });
   await disconnect(devices);
@@ -68,11 +72,14 @@ async function throughput(program: Program, what: string, readingsPerMessage: nu
 
 async function latency(program: Program, what: string): Promise<void> {
   const devices = await connectDevices(program.mqttUrl, names);
+  const before = program.coreSeconds();
   const latencies = await measureLatency({ devices, perSecond: steadyPerSecond, seconds });
+  const coreUs = ((program.coreSeconds() - before) * 1e6) / (steadyPerSecond * (seconds + warmUpMs / 1000));
   report({
     what: `${what}, publish → acknowledgement`,
     perSecond: latencies.offeredPerSecond,
     latencies,
+    coreUs,
     note: steady,
   });
   await disconnect(devices);
@@ -89,7 +96,7 @@ async function toBrowser(program: Program): Promise<void> {
     }
   });
   const devices: BenchDevice[] = await connectDevices(program.mqttUrl, names);
-  const total = steadyPerSecond * seconds;
+  const total = steadyPerSecond * (seconds + warmUpMs / 1000);
   const latencies = await measureLatency({
     devices,
     perSecond: steadyPerSecond,
@@ -101,12 +108,13 @@ async function toBrowser(program: Program): Promise<void> {
     },
   });
   await pause(500);
-  const seen: Latencies = summarise(samples.slice(steadyPerSecond));
-  const share = ((100 * samples.length) / (total + steadyPerSecond)).toFixed(1);
+  const seen: Latencies = summarise(samples.slice((steadyPerSecond * warmUpMs) / 1000));
+  const share = ((100 * samples.length) / total).toFixed(1);
   report({
     what: 'product, publish → browser event',
     perSecond: latencies.offeredPerSecond,
     latencies: seen,
+    coreUs: null,
     note: `${steady}; ${share} % seen by one page`,
   });
   page.close();
@@ -143,6 +151,7 @@ report({
   what: 'check evaluation',
   perSecond: 1e6 / evaluationUs,
   latencies: null,
+  coreUs: evaluationUs,
   note: `${evaluationUs.toFixed(1)} µs each, one core`,
 });
 
