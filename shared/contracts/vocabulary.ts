@@ -117,6 +117,7 @@ export const trustReasons = [
   'within-unsure',
   'check-overdue',
   'never-compared',
+  'value-unknown',
   'quality-doubtful',
   'clock-doubtful',
   'as-compared',

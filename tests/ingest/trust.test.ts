@@ -48,6 +48,12 @@ describe('trust and its reason in words', () => {
       'check −0.4 % on 24 Nov',
       lastCheck({ stage: 'automatic', errorPercent: -0.4, at: new Date('2026-11-24T09:00:00Z') }),
     ],
+    [
+      'use-with-care',
+      'value-unknown',
+      'no value at its reference temperature: the point’s model does not hold here',
+      reading({ valueUsCm: null }),
+    ],
     ['no-signal', 'no-probe', 'no probe is installed here', { probe: null }],
     ['no-signal', 'no-device', 'the probe has no device that could report', { device: null }],
     ['no-signal', 'never-heard', 'its device has never sent a reading', { reading: null }],

@@ -168,6 +168,10 @@ function judgeComparison({ lastCheck, point, fitness, now, timeZone }: TrustInpu
 }
 
 function judgeDoubts({ reading, device }: TrustInput): Trust | null {
+  if (reading && reading.valueUsCm === null) {
+    const text = 'no value at its reference temperature: the point’s model does not hold here';
+    return say('use-with-care', 'value-unknown', text);
+  }
   if (reading?.quality === 'doubtful') {
     return say('use-with-care', 'quality-doubtful', 'the device itself calls this reading doubtful');
   }
