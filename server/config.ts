@@ -92,7 +92,8 @@ export function readConfig(source: Record<string, string | undefined> = process.
     sessionSecret: env.SESSION_SECRET,
     publicUrl,
     isBehindTls: publicUrl.startsWith('https:'),
-    trustProxy: env.TRUST_PROXY,
+    // Saltmark speaks no TLS itself: behind an https address there is a proxy, and without its word no cookie is set.
+    trustProxy: env.TRUST_PROXY || publicUrl.startsWith('https:'),
     metricsToken: env.METRICS_TOKEN,
     parts: env.ROLES,
     clientDirectory: env.CLIENT_DIR,
