@@ -1,5 +1,4 @@
 import { Link, useLocation } from 'react-router-dom';
-import { Crumbs } from '../ui/page-head.tsx';
 
 export interface AreaTab {
   label: string;
@@ -23,9 +22,9 @@ export function AreaTabs({ label, items, home }: AreaTabsProps) {
   return (
     <>
       {home ? (
-        <div className="area-tabs-home">
-          <Crumbs items={[home]} />
-        </div>
+        <p className="crumbs area-tabs-home">
+          <Link to={home.to}>{home.label}</Link>
+        </p>
       ) : null}
       <nav className="tabs-list area-tabs" aria-label={label}>
         {items.map((item) => (

@@ -11,6 +11,7 @@ import { PhoneRow } from '../../../components/ui/ledger-parts.tsx';
 import { Ledger } from '../../../components/ui/ledger.tsx';
 import { SectionTitle } from '../../../components/ui/page-head.tsx';
 import { useNow } from '../../../components/ui/time.tsx';
+import { VisuallyHidden } from '../../../components/ui/visually-hidden.tsx';
 import { useToast } from '../../../components/ui/toast.tsx';
 import { useEndGrant } from '../api.ts';
 import { GrantRoleDialog } from './grant-role-dialog.tsx';
@@ -95,7 +96,7 @@ function columnsFor(today: string, endButton: (grant: Grant) => React.ReactNode)
       width: 'minmax(130px, .8fr)',
       cell: (grant) => <Until grant={grant} today={today} />,
     },
-    { key: 'end', head: '', headLabel: 'End', width: '70px', align: 'end', cell: endButton },
+    { key: 'end', head: <VisuallyHidden>End</VisuallyHidden>, width: '70px', align: 'end', cell: endButton },
   ];
 }
 

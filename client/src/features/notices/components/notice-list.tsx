@@ -13,6 +13,7 @@ import { PhoneRow } from '../../../components/ui/ledger-parts.tsx';
 import { Ledger } from '../../../components/ui/ledger.tsx';
 import { SectionTitle } from '../../../components/ui/page-head.tsx';
 import { Time } from '../../../components/ui/time.tsx';
+import { VisuallyHidden } from '../../../components/ui/visually-hidden.tsx';
 import { useToast } from '../../../components/ui/toast.tsx';
 import { paths } from '../../../paths.ts';
 import { openNotices, useCloseNotice } from '../api.ts';
@@ -75,7 +76,13 @@ function columnsFor(closeButton: (notice: Notice) => React.ReactNode): LedgerCol
       width: 'minmax(240px, 1fr)',
       cell: (notice) => <What notice={notice} />,
     },
-    { key: 'close', head: '', headLabel: 'Close', width: '90px', align: 'end', cell: closeButton },
+    {
+      key: 'close',
+      head: <VisuallyHidden>Close</VisuallyHidden>,
+      width: '90px',
+      align: 'end',
+      cell: closeButton,
+    },
   ];
 }
 

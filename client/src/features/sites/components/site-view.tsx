@@ -8,6 +8,7 @@ import { NameCell } from '../../../components/ui/figure.tsx';
 import type { LedgerColumn } from '../../../components/ui/ledger-parts.tsx';
 import { Ledger } from '../../../components/ui/ledger.tsx';
 import { PageHead, SectionTitle } from '../../../components/ui/page-head.tsx';
+import { VisuallyHidden } from '../../../components/ui/visually-hidden.tsx';
 import { paths } from '../../../paths.ts';
 import { AddAreaForm, RenameAreaDialog } from './area-forms.tsx';
 import { ChangeSiteDialog } from './change-site-dialog.tsx';
@@ -94,8 +95,7 @@ function areaColumns(site: Site, onRename: (area: Area) => void): LedgerColumn<A
     },
     site.can.addArea && {
       key: 'rename',
-      head: '',
-      headLabel: 'Rename',
+      head: <VisuallyHidden>Rename</VisuallyHidden>,
       width: '100px',
       align: 'end',
       cell: (area) => (
