@@ -1,13 +1,14 @@
 import type { ComponentType } from 'react';
 import { lazy, Suspense } from 'react';
 import { Navigate, Route, Routes } from 'react-router-dom';
+import { PageNotFetched } from './components/layout/page-not-fetched.tsx';
 import { UnknownAddress } from './components/layout/unknown-address.tsx';
 import { paths } from './paths.ts';
 import { SignedInLayout } from './routes/signed-in-layout.tsx';
 
 /** A page in a file of its own, fetched when it is first opened. */
 const page = (load: () => Promise<{ default: ComponentType }>) => {
-  const Page = lazy(load);
+  const Page = lazy(() => load().catch(() => ({ default: PageNotFetched })));
   return <Page />;
 };
 
@@ -39,6 +40,14 @@ const shellPages: readonly [address: { pattern: string }, element: React.ReactNo
   [paths.auditTrail, page(() => import('./routes/audit-trail-page.tsx'))],
   [paths.records, page(() => import('./routes/records-page.tsx'))],
   [paths.standards, page(() => import('./routes/standards-page.tsx'))],
+  [paths.prepareStandard, page(() => import('./routes/prepare-standard-page.tsx'))],
+  [paths.diluteStandard, page(() => import('./routes/dilute-standard-page.tsx'))],
+  [paths.instruments, page(() => import('./routes/instruments-page.tsx'))],
+  [paths.newInstrument, page(() => import('./routes/new-instrument-page.tsx'))],
+  [paths.instrument, page(() => import('./routes/instrument-page.tsx'))],
+  [paths.procedures, page(() => import('./routes/procedures-page.tsx'))],
+  [paths.procedure, page(() => import('./routes/procedure-page.tsx'))],
+  [paths.issueProcedure, page(() => import('./routes/issue-procedure-page.tsx'))],
   [paths.newStandard, page(() => import('./routes/new-standard-page.tsx'))],
   [paths.standard, page(() => import('./routes/standard-page.tsx'))],
   [paths.calculator, page(() => import('./routes/calculator-page.tsx'))],

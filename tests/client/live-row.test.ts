@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import {
   alarmsOf,
   alarmWords,
+  figureRoom,
   isSurprising,
   needsPersonNow,
   quantityOf,
@@ -110,6 +111,14 @@ describe('alarms', () => {
     const { shown, more } = alarmsOf([...rows, aLiveRow()]);
     expect(shown.map((row) => row.point.criticality)).toEqual(['critical', 'high', 'medium']);
     expect(more).toBe(1);
+  });
+});
+
+describe('the room of the value column', () => {
+  it('grows with the longest figure, so that values, U and units never touch', () => {
+    expect(figureRoom([aLiveRow()])).toEqual({ whole: 5, fraction: 3 });
+    const fine = aLiveRow({ reading: { valueUsCm: 6.985, expandedUncertaintyUsCm: 0.075 } });
+    expect(figureRoom([aLiveRow(), fine])).toEqual({ whole: 5, fraction: 4 });
   });
 });
 

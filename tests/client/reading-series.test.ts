@@ -68,19 +68,26 @@ describe('the data of a reading chart', () => {
     expect(datum?.max).toBeCloseTo((39 / 38) * 50, 10);
   });
 
+  const gaps = (minutes: number[], bucketSeconds: number | null) =>
+    dataOf(
+      series(
+        minutes.map((minute) => point(minute)),
+        bucketSeconds,
+      ),
+      {
+        factor: 1000,
+        relativeUncertainty: null,
+      },
+    ).map((datum) => datum.mean);
+
   it('breaks the line where buckets are missing', () => {
-    const data = dataOf(series([point(0), point(1), point(6), point(7)]), {
-      factor: 1000,
-      relativeUncertainty: null,
-    });
-    expect(data.map((datum) => datum.mean)).toEqual([50, 50, null, 50, 50]);
+    expect(gaps([0, 1, 7, 8], 60)).toEqual([50, 50, null, 50, 50]);
+    expect(gaps([0, 1, 3, 4], 60)).toEqual([50, 50, 50, 50]);
   });
 
-  it('breaks a line of single readings after five of their usual intervals', () => {
-    const drawing = { factor: 1, relativeUncertainty: null };
-    const whole = dataOf(series([point(0), point(1), point(2), point(6)], null), drawing);
-    expect(whole.every((datum) => datum.mean !== null)).toBe(true);
-    const broken = dataOf(series([point(0), point(1), point(2), point(8)], null), drawing);
-    expect(broken.map((datum) => datum.mean)).toEqual([50_000, 50_000, 50_000, null, 50_000]);
+  it('takes a device for silent by its own steps, and a slow one for slow', () => {
+    expect(gaps([0, 1, 2, 8, 9, 10], null)).toEqual([50, 50, 50, null, 50, 50, 50]);
+    expect(gaps([0, 10, 20, 30], 60)).toEqual([50, 50, 50, 50]);
+    expect(gaps([0, 10, 20, 21, 22], 60)).toEqual([50, 50, 50, 50, 50]);
   });
 });

@@ -48,11 +48,18 @@ export function Quantity(props: QuantityProps) {
       <span className="quantity-value" ref={ref}>
         <Figure text={quantity.value} whole={whole} fraction={fraction} />
       </span>
-      <span className="quantity-u" style={isStacked ? undefined : { width: 'calc(7ch + 12px)' }}>
+      <span
+        className="quantity-u"
+        style={isStacked ? undefined : { width: `calc(${4 + fraction}ch + 12px)` }}
+      >
         {hasU ? (
           <>
             ±{' '}
-            {isStacked ? quantity.uncertainty : <Figure text={quantity.uncertainty} whole={2} fraction={3} />}
+            {isStacked ? (
+              quantity.uncertainty
+            ) : (
+              <Figure text={quantity.uncertainty} whole={2} fraction={fraction} />
+            )}
           </>
         ) : null}
       </span>

@@ -65,6 +65,20 @@ export function quantityOf(row: LiveRow, reading: ReadingNow | null): ValueWithU
   });
 }
 
+/** Characters that the widest figures of a ledger need before and after the point, so that columns never collide. */
+export function figureRoom(rows: readonly LiveRow[]): { whole: number; fraction: number } {
+  let [whole, fraction] = [5, 3];
+  for (const row of rows) {
+    const { value, uncertainty } = quantityOf(row, row.reading);
+    for (const text of [value, uncertainty ?? '']) {
+      const [before = '', after] = text.split('.');
+      whole = Math.max(whole, before.length);
+      fraction = Math.max(fraction, after === undefined ? 0 : after.length + 1);
+    }
+  }
+  return { whole, fraction };
+}
+
 /** A reading that is merely away from its process (in a check solution, being cleaned) is nobody's emergency. */
 export const isAway = (row: LiveRow): boolean =>
   row.trust.level === 'do-not-use' && row.trust.reason === 'not-in-process';

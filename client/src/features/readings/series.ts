@@ -58,19 +58,25 @@ export interface Drawing {
 /** The answer as the chart takes it; where readings are missing the line is broken. */
 export function dataOf(series: Series, drawing: Drawing): SeriesDatum[] {
   const data = series.points.map((point) => datumOf(point, drawing));
-  const gapMs = gapOf(series, data);
-  return data.flatMap((datum, i) => {
-    const before = data[i - 1];
-    return before && datum.t - before.t > gapMs ? [{ t: before.t + 1, mean: null }, datum] : [datum];
-  });
+  return data.flatMap((datum, i) =>
+    isGap(data, i, series.bucketSeconds)
+      ? [{ t: (data[i - 1]?.t ?? datum.t) + 1, mean: null }, datum]
+      : [datum],
+  );
 }
 
-/** More than this between neighbours is a gap: two empty buckets, or five of the usual intervals. */
-function gapOf({ bucketSeconds }: Series, data: readonly SeriesDatum[]): number {
-  if (bucketSeconds !== null) return bucketSeconds * 3000;
-  const steps = data.slice(1).map((datum, i) => datum.t - (data[i]?.t ?? datum.t));
-  steps.sort((a, b) => a - b);
-  return (steps[Math.floor(steps.length / 2)] ?? Infinity) * 5;
+/** So many times the steps around it, and so many buckets, is no slow device but silence. */
+const GAP_STEPS = 5;
+const GAP_BUCKETS = 3;
+
+/** Whether nothing was heard before a datum. A device may report every second or every ten minutes: its own steps tell. */
+function isGap(data: readonly SeriesDatum[], i: number, bucketSeconds: number | null): boolean {
+  const step = (at: number) => {
+    const [from, to] = [data[at - 1], data[at]];
+    return from && to ? to.t - from.t : 0;
+  };
+  const around = Math.max(step(i - 1), step(i + 1));
+  return around > 0 && step(i) > GAP_STEPS * around && step(i) > GAP_BUCKETS * 1000 * (bucketSeconds ?? 0);
 }
 
 function datumOf(point: SeriesPoint, { factor, relativeUncertainty }: Drawing): SeriesDatum {

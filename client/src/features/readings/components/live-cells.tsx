@@ -23,8 +23,15 @@ import { useServerNow } from './board-clock.tsx';
 
 const TRACE_MS = 2 * 3_600_000;
 
+export interface LiveValueProps {
+  row: LiveRow;
+  isStacked?: boolean;
+  /** Characters that the column keeps for its figures. */
+  room?: { whole: number; fraction: number };
+}
+
 /** Value and U, followed live; asks for the board again when a reading brings something new about its trust. */
-export function LiveValue({ row, isStacked = false }: { row: LiveRow; isStacked?: boolean }) {
+export function LiveValue({ row, isStacked = false, room }: LiveValueProps) {
   const latest = useLatestReading(row.probe?.id);
   const isNews = isSurprising(row, latest);
   const queryClient = useQueryClient();
@@ -37,6 +44,7 @@ export function LiveValue({ row, isStacked = false }: { row: LiveRow; isStacked?
       state={valueState(row)}
       isStacked={isStacked}
       isLive
+      {...room}
     />
   );
 }

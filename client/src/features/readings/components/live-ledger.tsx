@@ -6,7 +6,7 @@ import type { LedgerColumn } from '../../../components/ui/ledger-parts.tsx';
 import { PhoneRow, RowLink } from '../../../components/ui/ledger-parts.tsx';
 import { Ledger } from '../../../components/ui/ledger.tsx';
 import { useWidth } from '../../../lib/use-width.ts';
-import { probeNote, rowHref, rowState, valueFoot, valueHead } from '../live-row.ts';
+import { figureRoom, probeNote, rowHref, rowState, valueFoot, valueHead } from '../live-row.ts';
 import type { LiveActions } from './live-cells.tsx';
 import {
   LiveAge,
@@ -25,8 +25,10 @@ export interface LiveLedgerProps extends LiveActions {
   empty?: ReactNode;
 }
 
-/** Container widths from which a column has room, px; narrower, the probe page shows what it held. */
+/** Container widths from which a column has room, px; narrower, temperature and age stand under the name. */
 const ROOM = { trace: 1200, work: 1060, temperature: 900 };
+/** A column of values with three characters after the point, and what each further one adds, px. */
+const VALUE_WIDTH = { wide: 244, tight: 218, more: 21 };
 
 /** The points of one site, or of all, as ledger rows that follow the plant. */
 export function LiveLedger({ label, rows, groupOf, empty, onHold, onRelease }: LiveLedgerProps) {
@@ -36,7 +38,7 @@ export function LiveLedger({ label, rows, groupOf, empty, onHold, onRelease }: L
     <div ref={ref} className="live-ledger">
       <Ledger
         label={label}
-        columns={columnsFor(width, valueHead(rows), actions)}
+        columns={columnsFor(width, rows, actions)}
         rows={rows}
         rowKey={(row) => row.point.id}
         rowHref={rowHref}
@@ -50,20 +52,30 @@ export function LiveLedger({ label, rows, groupOf, empty, onHold, onRelease }: L
   );
 }
 
-function columnsFor(width: number, head: string, actions: LiveActions): LedgerColumn<LiveRow>[] {
+function columnsFor(width: number, rows: readonly LiveRow[], actions: LiveActions): LedgerColumn<LiveRow>[] {
   const isTight = width < ROOM.temperature;
+  const room = figureRoom(rows);
+  const valueWidth =
+    (isTight ? VALUE_WIDTH.tight : VALUE_WIDTH.wide) +
+    VALUE_WIDTH.more * (room.fraction - 3) +
+    (VALUE_WIDTH.more / 2) * (room.whole - 5);
   const columns: (LedgerColumn<LiveRow> | false)[] = [
     {
       key: 'point',
       head: 'Point',
-      width: isTight ? '190px' : '212px',
-      cell: (row) => <NameCell name={row.point.name} note={probeNote(row)} />,
+      width: isTight ? 'minmax(140px, 1fr)' : '212px',
+      cell: (row) => (
+        <>
+          <NameCell name={row.point.name} note={probeNote(row)} />
+          {isTight ? <NameNote row={row} /> : null}
+        </>
+      ),
     },
     {
       key: 'value',
-      head: <span className="live-value-head">{head}</span>,
-      width: '244px',
-      cell: (row) => <LiveValue row={row} />,
+      head: valueHead(rows),
+      width: `${valueWidth}px`,
+      cell: (row) => <LiveValue row={row} room={room} />,
     },
     !isTight && {
       key: 'temperature',
@@ -74,14 +86,14 @@ function columnsFor(width: number, head: string, actions: LiveActions): LedgerCo
     {
       key: 'trust',
       head: 'Trust and reason',
-      width: 'minmax(150px, 1fr)',
+      width: isTight ? 'minmax(130px, 1fr)' : 'minmax(150px, 1fr)',
       cell: (row) => <LiveTrust row={row} />,
     },
     {
       key: 'strip',
       head: <StripHead />,
       headLabel: 'Last error between minus tolerance and plus tolerance',
-      width: '150px',
+      width: isTight ? '124px' : '150px',
       cell: (row) => <LiveStrip row={row} />,
     },
     width >= ROOM.trace && {
@@ -90,7 +102,13 @@ function columnsFor(width: number, head: string, actions: LiveActions): LedgerCo
       width: '128px',
       cell: (row) => <LiveTrace row={row} />,
     },
-    { key: 'age', head: 'Age', width: '70px', align: 'end', cell: (row) => <LiveAge row={row} /> },
+    !isTight && {
+      key: 'age',
+      head: 'Age',
+      width: '70px',
+      align: 'end',
+      cell: (row) => <LiveAge row={row} />,
+    },
     width >= ROOM.work && {
       key: 'work',
       head: 'Working there',
@@ -109,9 +127,7 @@ function LivePhoneRow({ row, onHold, onRelease }: { row: LiveRow } & LiveActions
           <RowLink to={rowHref(row)}>
             <NameCell name={row.point.name} note={probeNote(row)} />
           </RowLink>
-          <span className="live-phone-note">
-            <LiveTemperature row={row} /> <LiveAge row={row} />
-          </span>
+          <NameNote row={row} />
         </>
       }
       value={<LiveValue row={row} isStacked />}
@@ -119,5 +135,14 @@ function LivePhoneRow({ row, onHold, onRelease }: { row: LiveRow } & LiveActions
       strip={<LiveStrip row={row} />}
       more={row.hold ? <LiveWork row={row} onHold={onHold} onRelease={onRelease} /> : undefined}
     />
+  );
+}
+
+/** Temperature and age, where they have no column of their own. */
+function NameNote({ row }: { row: LiveRow }) {
+  return (
+    <span className="live-phone-note">
+      <LiveTemperature row={row} /> <LiveAge row={row} />
+    </span>
   );
 }
