@@ -60,6 +60,11 @@ export const paths = {
   standards: address('/standards'),
   calculator: address('/standards/calculator'),
   newStandard: address('/standards/new'),
+  prepareStandard: address('/standards/prepare'),
+  diluteStandard: address('/standards/dilute'),
+  instruments: address('/standards/instruments'),
+  newInstrument: address('/standards/instruments/new'),
+  instrument: address('/standards/instruments/:id'),
   standard: address('/standards/:id'),
 
   records: address('/records'),
@@ -76,6 +81,9 @@ export const paths = {
   quarantinedMessage: address('/settings/quarantine/:id'),
   mail: address('/settings/mail'),
   organisation: address('/settings/organisation'),
+  procedures: address('/settings/procedures'),
+  procedure: address('/settings/procedures/:id'),
+  issueProcedure: address('/settings/procedures/:id/issue'),
   account: address('/settings/account'),
 } as const;
 

@@ -125,7 +125,8 @@ function requireDilute(molarityMolL: number): number {
   if (molarityMolL <= HIGHEST_DILUTED_MOLARITY) return molarityMolL;
   throw new OutOfDomainError({
     quantity: 'concentration of the diluted solution',
-    value: molarityMolL,
+    // Four decimals say enough in a sentence.
+    value: Math.round(molarityMolL * 1e4) / 1e4,
     unit: 'mol/L',
     lower: LOWEST_MOLALITY,
     upper: HIGHEST_DILUTED_MOLARITY,

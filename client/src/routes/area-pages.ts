@@ -10,6 +10,7 @@ export const probeTabs: readonly AreaTab[] = [
 
 export const standardTabs: readonly AreaTab[] = [
   { label: 'Lots', to: paths.standards.to() },
+  { label: 'Instruments', to: paths.instruments.to() },
   { label: 'Calculator', to: paths.calculator.to() },
 ];
 
@@ -39,6 +40,11 @@ export function settingsPages({ can }: Session): SettingsPage[] {
       label: 'Mail',
       to: paths.mail.to(),
       sentence: 'Every mail that left or waits to leave, with its text.',
+    },
+    {
+      label: 'Procedures',
+      to: paths.procedures.to(),
+      sentence: 'How a calibration is done, step by step, and the numbers it is held to.',
     },
     {
       label: 'Organisation',

@@ -12,11 +12,19 @@ export default function StandardsPage() {
       <AreaTabs label="Reference solutions" items={standardTabs} />
       <LotList
         addLink={
-          can.createStandard ? (
-            <ButtonLink kind="primary" to={paths.newStandard.to()}>
-              Register a lot
-            </ButtonLink>
-          ) : null
+          <div className="page-buttons">
+            {can.createStandard ? (
+              <ButtonLink kind="primary" to={paths.newStandard.to()}>
+                Register a lot
+              </ButtonLink>
+            ) : null}
+            {can.prepareStandard ? (
+              <>
+                <ButtonLink to={paths.prepareStandard.to()}>Prepare by weighing</ButtonLink>
+                <ButtonLink to={paths.diluteStandard.to()}>Dilute a lot</ButtonLink>
+              </>
+            ) : null}
+          </div>
         }
       />
     </>

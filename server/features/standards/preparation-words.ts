@@ -69,8 +69,11 @@ export function weighingRemarks(given: WeighedPreparation, molalityMolKg: number
       : 'Not near 0.01, 0.1 or 1 mol/kg: its temperature shape lies between those of the standards.';
   return [
     shape,
-    ...(given.saltBalanceId === null || given.waterBalanceId === null
-      ? ['Without a balance from the list its U is assumed: 0.2 mg for the salt, 20 mg for the water.']
+    ...(given.saltBalanceId === null
+      ? ['No balance from the list weighed the salt: u of 0.2 mg is assumed.']
+      : []),
+    ...(given.waterBalanceId === null
+      ? ['No balance from the list weighed the water: u of 20 mg is assumed.']
       : []),
     ...(given.waterBlankUsCm === 0 ? ['No water reads zero: measure the blank.'] : []),
     compareFirst,
@@ -86,7 +89,7 @@ export function dilutionRemarks(given: DilutedPreparation, conductivityUsCm: num
       ? ['Below 50 µS/cm an open beaker measures carbon dioxide too: use it closed and at once.']
       : []),
     ...(given.balanceId === null
-      ? ['Without a balance from the list its U is assumed: 10 mg for both readings.']
+      ? ['No balance from the list weighed them: u of 10 mg is assumed for both readings.']
       : []),
     compareFirst,
   ];

@@ -186,6 +186,11 @@ export function CertificateFields(props: LotFieldsProps) {
 }
 
 type NumberKey =
-  'certifiedConductivityUsCm' | 'referenceTemperatureC' | 'expandedUncertaintyUsCm' | 'coverageFactor';
+  | 'certifiedConductivityUsCm'
+  | 'referenceTemperatureC'
+  | 'expandedUncertaintyUsCm'
+  | 'coverageFactor'
+  | 'coverageProbabilityPercent'
+  | 'openedLifeDays';
 
 const MAY_BE_EMPTY: ReadonlySet<NumberKey> = new Set(['coverageProbabilityPercent', 'openedLifeDays']);

@@ -16,9 +16,19 @@ import { Crumbs, PageHead, SectionTitle } from '../../../components/ui/page-head
 import { paths } from '../../../paths.ts';
 import { certifiedNote, certifiedQuantity, lotState, solutionName } from '../model.ts';
 import { LotActions } from './lot-actions.tsx';
+import { LotHistory, LotUses } from './lot-uses.tsx';
+import { PreparationResult } from './preparation-result.tsx';
+
+export interface LotViewProps {
+  lot: Standard;
+  /** Its certificate file, its bottles and what was compared with it, as their own slices draw them. */
+  certificate: ReactNode;
+  bottles: ReactNode;
+  checks: ReactNode;
+}
 
 /** One lot: what its certificate says, whether it may be used, and what was compared with it. */
-export function LotView({ lot, checks }: { lot: Standard; checks: ReactNode }) {
+export function LotView({ lot, certificate, bottles, checks }: LotViewProps) {
   const state = lotState(lot);
   return (
     <>
@@ -39,19 +49,34 @@ export function LotView({ lot, checks }: { lot: Standard; checks: ReactNode }) {
       <div className="two-columns">
         <div>
           <section>
-            <SectionTitle>Certificate</SectionTitle>
+            <SectionTitle>{lot.isInHouse ? 'In-house, not certified' : 'Certificate'}</SectionTitle>
             <CertificateFacts lot={lot} />
           </section>
+          {lot.preparation ? (
+            <section>
+              <SectionTitle note={lot.preparation.preparedBy ?? undefined}>How it was made</SectionTitle>
+              <PreparationResult preparation={lot.preparation} hasTable={false} />
+            </section>
+          ) : null}
         </div>
         <div>
+          <LotUses lot={lot} />
+          {certificate}
+          <LotHistory lot={lot} />
           <TemperatureTable lot={lot} />
           <div>
             <ButtonLink to={paths.calculator.to({ calc: 'standard', by: 'lot', standardId: lot.id })}>
               Value at another temperature
             </ButtonLink>
+            {lot.can.dilute ? (
+              <ButtonLink className="ml-2" to={paths.diluteStandard.to({ standardId: lot.id })}>
+                Dilute this lot
+              </ButtonLink>
+            ) : null}
           </div>
         </div>
       </div>
+      {bottles}
       {checks}
     </>
   );
