@@ -4,7 +4,9 @@ import { dirname } from 'node:path';
 import { connectDatabase } from '../server/db/sequelize.ts';
 import { Setting, User } from '../server/db/models/index.ts';
 import { demoSeed, scenarioHistory } from '../simulator/scenario/history.ts';
+import { loadBottles } from './demo/bottles.ts';
 import { loadChecks } from './demo/checks.ts';
+import { loadInstruments } from './demo/instruments.ts';
 import type { Loading } from './demo/loading.ts';
 import { loadPeople, loadPlaces } from './demo/people-and-places.ts';
 import { loadHold, placeProbes, writeFleetFile } from './demo/present-day.ts';
@@ -47,6 +49,8 @@ try {
   await loadPlaces(loading);
   await loadPeople(loading);
   await loadStandards(loading);
+  await loadBottles(loading);
+  await loadInstruments(loading);
   await loadProbes(loading);
   const checks = await loadChecks(loading);
   await loadHold(loading);

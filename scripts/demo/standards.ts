@@ -1,5 +1,21 @@
 import { Standard } from '../../server/db/models/index.ts';
+import { storeCertificate } from './certificates.ts';
 import { dayOf, type Loading } from './loading.ts';
+
+type Lot = Loading['history']['lots'][number];
+
+/** What a producer's certificate says, on one page. */
+const certificateLines = (lot: Lot): string[] => [
+  lot.producer,
+  `Certificate ${lot.certificateNumber}`,
+  `${lot.product}, lot ${lot.code}`,
+  `Conductivity at ${lot.referenceTemperatureC} C: ${lot.certifiedUsCm} uS/cm`,
+  `Expanded uncertainty: ${lot.expandedUncertaintyPercent} %, k = ${lot.coverageFactor}`,
+  ...(lot.temperatureTable ?? []).map((row) => `${row.temperatureC} C: ${row.conductivityUsCm} uS/cm`),
+  lot.traceability,
+  `Issued ${dayOf(lot.issuedAt)}, expires ${dayOf(lot.expiresAt)}. ${lot.storage}`,
+  'An invented certificate of an invented producer, for the demonstration.',
+];
 
 export async function loadStandards(loading: Loading): Promise<void> {
   for (const lot of loading.history.lots) {
@@ -21,10 +37,19 @@ export async function loadStandards(loading: Loading): Promise<void> {
       isInHouse: false,
       issuedOn: dayOf(lot.issuedAt),
       expiresOn: dayOf(lot.expiresAt),
+      openedLifeDays: lot.openedLifeDays,
+      storage: lot.storage,
+      coverageProbabilityPercent: lot.coverageProbability * 100,
     };
+    const certificateId = await storeCertificate(loading, {
+      fileName: `${lot.code}-certificate.pdf`,
+      lines: certificateLines(lot),
+      at: lot.receivedAt,
+    });
     const row = await Standard.create({
       ...facts,
       code: lot.code,
+      certificateId,
       state: lot.state,
       stateReason: newest?.reason ?? null,
       stateChangedAt: new Date(newest?.at ?? lot.receivedAt),
