@@ -76,7 +76,17 @@ export function deedWords(event: AuditEventView): string {
 }
 
 /** Kinds whose entries carry the name of the thing itself. */
-const NAMED = new Set(['sites', 'areas', 'points', 'probes', 'standards', 'users']);
+const NAMED = new Set([
+  'sites',
+  'areas',
+  'points',
+  'probes',
+  'standards',
+  'bottles',
+  'instruments',
+  'procedures',
+  'users',
+]);
 
 const numbered = (id: string) => (/^\d+$/.test(id) ? `no. ${id}` : `“${id}”`);
 
