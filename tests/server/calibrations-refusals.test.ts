@@ -1,5 +1,5 @@
 import { randomUUID } from 'node:crypto';
-import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
 import {
   Calibration,
   Capture,
@@ -23,6 +23,9 @@ import {
 } from '../support/calibration-run.ts';
 import { refusals, type Refusal } from '../support/refusals.ts';
 import { aDevice, aPoint, aProbe, aStandard, installed, someReadings } from '../support/rows.ts';
+
+// A whole run is some thirty requests; several are made in one test.
+vi.setConfig({ testTimeout: 120_000 });
 
 let app: TestApp;
 /** A bench nobody has begun at, one with a run at its first capture, one signed. */
@@ -479,7 +482,7 @@ describe('a run', () => {
     expect(jump.last.judgement.advice).toMatchObject({ decision: 'adjust', needsReason: true });
     const silent = await jump.ask('steps', stepBody({ step: 'decide', decision: 'adjust' }));
     expect(silent.body.code).toBe('calibrations.adjustment-reason');
-  }, 60_000);
+  });
 });
 
 describe('the same deed sent twice', () => {
@@ -575,5 +578,5 @@ describe('the database itself', () => {
     expect(answers.map(({ number }) => number).toSorted()).toEqual(
       [1, 2].map((n) => `${bench.site.code}-2026-000${n}`),
     );
-  }, 90_000);
+  });
 });

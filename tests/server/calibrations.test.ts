@@ -1,4 +1,4 @@
-import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
 import {
   Bottle,
   Check,
@@ -12,6 +12,9 @@ import { canonicalJson, sha256Hex } from '../../server/lib/hashing.ts';
 import type { Calibration, CalibrationRecord } from '../../shared/contracts/calibrations.ts';
 import { startTestApp, testNow, testPassword, type TestApp } from '../support/app.ts';
 import { aBench, aRun, captureBody, stepBody, type Bench } from '../support/calibration-run.ts';
+
+// A whole run is some thirty requests; several are made in one test.
+vi.setConfig({ testTimeout: 120_000 });
 
 let app: TestApp;
 beforeAll(async () => {

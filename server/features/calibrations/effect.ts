@@ -1,12 +1,12 @@
 /** What a run does once it counts: comparisons, the cell constant on record, the next due date, the order to the device. */
-import { Op } from 'sequelize';
 import type { Verdict } from '../../../shared/contracts/calibrations.ts';
 import type { CheckStage, RunStep } from '../../../shared/contracts/vocabulary.ts';
 import { toDateInput } from '../../../shared/format/dates.ts';
-import { CellConstant, Check, Point, Probe, ProbeEvent, Prompt } from '../../db/models/index.ts';
+import { CellConstant, Check, Point, Probe, ProbeEvent } from '../../db/models/index.ts';
 import type { OpenTransaction } from '../../db/transaction.ts';
 import type { Actor } from '../../http/actor.ts';
 import type { Parts } from '../../parts.ts';
+import { refreshPrompts } from '../prompts/service.ts';
 import { orderCellConstant } from './commands.ts';
 import { endHoldOfRun } from './holds.ts';
 import { stepDone, type Run, type Told } from './runs.ts';
@@ -21,16 +21,13 @@ export async function bringIntoEffect(
   run: Run,
 ): Promise<Told[]> {
   const now = parts.clock.now();
-  const told = new Set<Told>(['checks', 'probes', 'readings', 'prompts']);
+  const told = new Set<Told>(['checks', 'probes', 'readings']);
   await writeChecks(transaction, run, now);
   await recordCellConstant(transaction, actor, run, now);
   await orderCellConstant(parts, transaction, actor, run);
   if (await endHoldOfRun(transaction, run, now)) told.add('points');
-  await Prompt.update(
-    { closedAt: now },
-    { where: { probeId: run.row.probeId, closedAt: { [Op.is]: null } }, transaction },
-  );
   await run.row.update({ effectiveAt: now, dueOn: await dueOnOf(transaction, run) }, { transaction });
+  await refreshPrompts(parts, transaction, run.row.probeId);
   return [...told];
 }
 

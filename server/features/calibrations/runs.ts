@@ -60,25 +60,13 @@ export async function loadRun(id: number, transaction: Transaction | null = null
     order: ['id'],
     transaction,
   });
-  const signatures = await Signature.findAll({
-    where: { calibrationId: row.id },
-    order: ['id'],
-    transaction,
-  });
-  const command = await DeviceCommand.findOne({
-    where: { calibrationId: { [Op.in]: chainIds } },
-    order: [['id', 'DESC']],
-    transaction,
-  });
-  const later = await Calibration.findOne({ where: { amendsId: id }, transaction });
   const [original] = amended;
   return {
     row,
     areaName: area?.name ?? '',
     steps,
     captures,
-    signatures,
-    command,
+    ...(row.signedAt === null ? unsigned : await loadAftermath(row.id, chainIds, transaction)),
     amends: original
       ? {
           id: original.id,
@@ -87,8 +75,26 @@ export async function loadRun(id: number, transaction: Transaction | null = null
           isInEffect: amended.some(({ effectiveAt }) => effectiveAt !== null),
         }
       : null,
-    amendedBy: later && { id: later.id, number: later.number! },
   };
+}
+
+type Aftermath = Pick<Run, 'signatures' | 'command' | 'amendedBy'>;
+const unsigned: Aftermath = { signatures: [], command: null, amendedBy: null };
+
+async function loadAftermath(
+  id: number,
+  chainIds: readonly number[],
+  transaction: Transaction | null,
+): Promise<Aftermath> {
+  const where = { calibrationId: id };
+  const signatures = await Signature.findAll({ where, order: ['id'], transaction });
+  const command = await DeviceCommand.findOne({
+    where: { calibrationId: { [Op.in]: [...chainIds] } },
+    order: [['id', 'DESC']],
+    transaction,
+  });
+  const later = await Calibration.findOne({ where: { amendsId: id }, transaction });
+  return { signatures, command, amendedBy: later && { id: later.id, number: later.number! } };
 }
 
 /** The records an amendment goes back to, the one it amends first. */
