@@ -12,7 +12,7 @@ import type {
 } from '../../../../shared/contracts/calibrations.ts';
 import type { ListOf } from '../../../../shared/contracts/common.ts';
 import type { Instrument } from '../../../../shared/contracts/instruments.ts';
-import type { ProbeRow } from '../../../../shared/contracts/probes.ts';
+import type { Probe, ProbeRow } from '../../../../shared/contracts/probes.ts';
 import type { Standard } from '../../../../shared/contracts/standards.ts';
 import { http, NetworkFailure } from '../../lib/http.ts';
 import { keepRun, keptRun } from './offline/deed-store.ts';
@@ -78,7 +78,7 @@ export const probesByCode = (code: string) =>
 export const probeToCalibrate = (id: number) =>
   queryOptions({
     queryKey: ['probes', 'detail', id] as const,
-    queryFn: ({ signal }) => http.get<ProbeRow>(`/api/probes/${id}`, { signal }),
+    queryFn: ({ signal }) => http.get<Probe>(`/api/probes/${id}`, { signal }),
   });
 
 export const releasedLots = () =>
@@ -87,11 +87,11 @@ export const releasedLots = () =>
     queryFn: ({ signal }) => http.get<ListOf<Standard>>('/api/standards', { query: { limit: 200 }, signal }),
   });
 
-export const usableBottles = (standardId: number) =>
+export const usableBottles = () =>
   queryOptions({
-    queryKey: ['bottles', 'list', { usable: '1', standardId }] as const,
+    queryKey: ['bottles', 'list', { usable: '1' }] as const,
     queryFn: ({ signal }) =>
-      http.get<ListOf<Bottle>>('/api/bottles', { query: { usable: '1', standardId, limit: 100 }, signal }),
+      http.get<ListOf<Bottle>>('/api/bottles', { query: { usable: '1', limit: 500 }, signal }),
   });
 
 export const usableThermometers = () =>

@@ -6,19 +6,6 @@ import type {
   RunStep,
 } from '../../../../shared/contracts/vocabulary.ts';
 
-/** Words that stand on the record on paper too. */
-export {
-  changeWords,
-  COMMAND_LABELS,
-  decimalsOf,
-  EXCLUSION_LABELS,
-  MEANING_LABELS,
-  SOURCE_LABELS,
-  STEP_LABELS,
-  verdictSentence,
-  verdictStrip,
-} from '../../../../shared/format/calibration-words.ts';
-
 type Words<Code extends string> = Readonly<Record<Code, string>>;
 
 export const STATUS_LABELS: Words<CalibrationStatus> = {

@@ -1,8 +1,6 @@
 import type { CaptureStep, RunStep } from '../../../../../shared/contracts/vocabulary.ts';
 import type { Criteria } from '../../../../../shared/contracts/procedures.ts';
 
-export { benchConductivity, benchUnit } from '../../../../../shared/format/calibration-words.ts';
-
 /** Steps in a reference solution: replicates, and an error at the end. */
 export const SOLUTION_STEPS = ['as-found', 'as-found-cleaned', 'second-point', 'as-left'] as const;
 export type SolutionStep = (typeof SOLUTION_STEPS)[number];

@@ -1,12 +1,13 @@
 import { useState } from 'react';
 import type { Calibration, StepData } from '../../../../../shared/contracts/calibrations.ts';
 import type { CaptureStep, RunStep } from '../../../../../shared/contracts/vocabulary.ts';
+import { STEP_LABELS } from '../../../../../shared/format/calibration-words.ts';
 import { Button } from '../../../components/ui/button.tsx';
 import { useConnection } from '../../../lib/live-updates.ts';
 import { stepDeed } from '../offline/deeds.ts';
 import { phoneQueue, useMeasuredClock, useQueue } from '../offline/phone-queue.ts';
 import { runWithDeeds } from '../offline/run-state.ts';
-import { STEP_LABELS, stepPlace } from '../words.ts';
+import { stepPlace } from '../words.ts';
 import { BenchContext, useBench } from './bench-context.ts';
 import { BenchFoot } from './bench-foot.tsx';
 import { BenchHead } from './bench-head.tsx';

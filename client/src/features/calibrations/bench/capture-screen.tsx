@@ -1,6 +1,7 @@
 import { useState } from 'react';
 import type { CaptureReading, StepData } from '../../../../../shared/contracts/calibrations.ts';
 import type { CaptureStep } from '../../../../../shared/contracts/vocabulary.ts';
+import { benchUnit } from '../../../../../shared/format/calibration-words.ts';
 import { ToleranceStrip } from '../../../components/strip/tolerance-strip.tsx';
 import { Button } from '../../../components/ui/button.tsx';
 import { captureDeed } from '../offline/deeds.ts';
@@ -9,7 +10,7 @@ import { capturesOf, countingOf, waitingSince } from '../offline/run-state.ts';
 import { plannedGuardBand } from '../words.ts';
 import { useBench } from './bench-context.ts';
 import { BenchFoot } from './bench-foot.tsx';
-import { benchUnit, isFarFrom, isSolutionStep, neededCaptures } from './bench-figures.ts';
+import { isFarFrom, isSolutionStep, neededCaptures } from './bench-figures.ts';
 import { useStableSignal } from './bench-senses.ts';
 import { placeWords, settleLimits } from './capture-model.ts';
 import { HoldButton } from './hold-button.tsx';
@@ -51,13 +52,17 @@ export function CaptureScreen({ step }: { step: CaptureStep }) {
     stream.reading?.conductivityUsCm ?? null,
     ...captures.map((one) => one.conductivityUsCm),
   ]);
-  const isTyped = stream.reading === null;
-  const reading = isTyped ? typed : stream.reading!;
+  const isTyped = stream.reading === null && !stream.isWaiting;
+  const reading = isTyped ? typed : (stream.reading ?? NO_VALUES);
   const gate = captureGate();
 
   function captureGate(): string | null {
     if (reading.conductivityUsCm === null || reading.temperatureC === null)
-      return isTyped ? 'Type both values' : 'The probe shows no value';
+      return isTyped
+        ? 'Type both values'
+        : stream.isWaiting
+          ? 'Waiting for the probe'
+          : 'The probe shows no value';
     if (Number.isNaN(reading.conductivityUsCm) || Number.isNaN(reading.temperatureC))
       return 'Type both as numbers';
     if (step === 'temperature-sensor' && !isNumber(reference.temperatureC)) return 'Type the thermometer';
@@ -131,9 +136,7 @@ export function CaptureScreen({ step }: { step: CaptureStep }) {
               <SettlePanel
                 settling={settling}
                 limits={limits}
-                leftS={leftS}
-                isMuted={signal.isMuted}
-                onMute={signal.mute}
+                leftS={step === 'as-found-process' ? null : leftS}
               />
             </>
           )}
@@ -152,6 +155,14 @@ export function CaptureScreen({ step }: { step: CaptureStep }) {
             </div>
           ) : null}
           <RefusedDeeds />
+          <button
+            type="button"
+            className="bench-sound"
+            aria-pressed={!signal.isMuted}
+            onClick={() => signal.mute(!signal.isMuted)}
+          >
+            {signal.isMuted ? 'No sound when stable' : 'A sound when stable'}
+          </button>
         </div>
       </div>
       <BenchFoot>

@@ -1,14 +1,13 @@
 import { useState } from 'react';
 import { formatNumber, formatSigned } from '../../../../../shared/format/numbers.ts';
+import { benchUnit, changeWords } from '../../../../../shared/format/calibration-words.ts';
 import { Button } from '../../../components/ui/button.tsx';
 import { Dialog } from '../../../components/ui/dialog.tsx';
 import { Field } from '../../../components/ui/field.tsx';
 import { Textarea } from '../../../components/ui/text-input.tsx';
 import { capturesOf } from '../offline/run-state.ts';
-import { changeWords } from '../words.ts';
 import { useBench } from './bench-context.ts';
 import { BenchFoot } from './bench-foot.tsx';
-import { benchUnit } from './bench-figures.ts';
 import { RefusedDeeds } from './refused-deeds.tsx';
 import { Replicates } from './replicates.tsx';
 import { VerdictPanel } from './verdict-panel.tsx';

@@ -1,6 +1,7 @@
 import { useState } from 'react';
 import type { ExclusionCode } from '../../../../../shared/contracts/vocabulary.ts';
 import { exclusionCodes } from '../../../../../shared/contracts/vocabulary.ts';
+import { EXCLUSION_LABELS } from '../../../../../shared/format/calibration-words.ts';
 import { Button } from '../../../components/ui/button.tsx';
 import { Dialog } from '../../../components/ui/dialog.tsx';
 import { Field } from '../../../components/ui/field.tsx';
@@ -8,7 +9,6 @@ import { RadioGroup } from '../../../components/ui/radio-group.tsx';
 import { TextInput } from '../../../components/ui/text-input.tsx';
 import { excludeDeed } from '../offline/deeds.ts';
 import type { RunCapture } from '../offline/run-state.ts';
-import { EXCLUSION_LABELS } from '../words.ts';
 import { useBench } from './bench-context.ts';
 
 /** A reading is never edited or deleted: it is excluded, with a reason from the list, and stays visible. */

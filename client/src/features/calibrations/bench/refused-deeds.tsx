@@ -1,10 +1,9 @@
 import { Button } from '../../../components/ui/button.tsx';
 import { formatTime } from '../../../../../shared/format/dates.ts';
-import { benchConductivity, benchUnit } from './bench-figures.ts';
+import { STEP_LABELS, benchConductivity, benchUnit } from '../../../../../shared/format/calibration-words.ts';
 import type { Deed, QueuedDeed } from '../offline/deeds.ts';
 import { confirmedCapture } from '../offline/deeds.ts';
 import { phoneQueue } from '../offline/phone-queue.ts';
-import { STEP_LABELS } from '../words.ts';
 import { useBench } from './bench-context.ts';
 
 /** What the server did not accept stays here until the person has dealt with it; nothing is dropped silently. */

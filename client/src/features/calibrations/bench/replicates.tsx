@@ -1,14 +1,16 @@
 import type { ReactNode } from 'react';
 import { useState } from 'react';
-import type { ExclusionCode } from '../../../../../shared/contracts/vocabulary.ts';
 import { formatTime } from '../../../../../shared/format/dates.ts';
 import type { ConductivityUnit } from '../../../../../shared/format/numbers.ts';
 import { formatNumber } from '../../../../../shared/format/numbers.ts';
 import { labelOf } from '../../../../../shared/format/labels.ts';
+import {
+  benchConductivity,
+  benchUnit,
+  EXCLUSION_LABELS,
+} from '../../../../../shared/format/calibration-words.ts';
 import { classNames } from '../../../components/ui/button.tsx';
 import type { RunCapture } from '../offline/run-state.ts';
-import { EXCLUSION_LABELS } from '../words.ts';
-import { benchConductivity } from './bench-figures.ts';
 import { useBench } from './bench-context.ts';
 import { ExcludeDialog } from './exclude-dialog.tsx';
 
@@ -43,7 +45,7 @@ export function Replicates({ captures, needed, unit, isOpen = true }: Replicates
                   <button
                     type="button"
                     className="replicate-exclude"
-                    aria-label={`Replicate ${capture.position}, ${WHEREABOUTS[capture.whereabouts]}: exclude it`}
+                    aria-label={`Replicate ${capture.position}, ${WHEREABOUTS[capture.whereabouts]}; exclude…`}
                     onClick={() => setExcluding(capture)}
                   >
                     {WHEREABOUTS[capture.whereabouts]}
@@ -83,31 +85,46 @@ function ReplicateRow({ capture, unit, status }: ReplicateRowProps) {
   const value = benchConductivity(capture.conductivityUsCm, unit);
   const temperature = formatNumber(capture.temperatureC, { decimals: 2 });
   const isVoid = excluded !== null || refusal !== null;
+  const notes = notesOf(capture, timeZone);
   return (
-    <tr className={classNames(excluded && 'is-excluded', refusal && 'is-refused')}>
-      <th scope="row">{capture.position}</th>
-      <td>
-        {isVoid ? <s>{value}</s> : value} <u>{unit}</u>
-        {excluded ? (
-          <small>
-            excluded: {labelOf(EXCLUSION_LABELS as Record<string, string>, excluded.code as ExclusionCode)}
-            {excluded.note ? `, ${excluded.note}` : ''}
-          </small>
-        ) : null}
-        {refusal ? <small>at {formatTime(capture.capturedAt, { timeZone })}, see below</small> : null}
-        {!isVoid && !capture.isStable ? <small>not stable within the time-out</small> : null}
-        {!isVoid && capture.source === 'typed' ? <small>typed</small> : null}
-      </td>
-      <td>
-        {isVoid ? <s>{temperature}</s> : temperature} <u>°C</u>
-        {capture.referenceTemperatureC !== null ? (
-          <small>thermometer {formatNumber(capture.referenceTemperatureC, { decimals: 2 })} °C</small>
-        ) : null}
-        {capture.referenceConductivityUsCm !== null ? (
-          <small>meter {benchConductivity(capture.referenceConductivityUsCm, unit)}</small>
-        ) : null}
-      </td>
-      <td>{status}</td>
-    </tr>
+    <>
+      <tr
+        className={classNames(
+          excluded && 'is-excluded',
+          refusal && 'is-refused',
+          notes.length > 0 && 'has-note',
+        )}
+      >
+        <th scope="row">{capture.position}</th>
+        <td>
+          {isVoid ? <s>{value}</s> : value} <u>{unit}</u>
+        </td>
+        <td>
+          {isVoid ? <s>{temperature}</s> : temperature} <u>°C</u>
+        </td>
+        <td>{status}</td>
+      </tr>
+      {notes.length > 0 ? (
+        <tr className={classNames('replicate-note', refusal && 'is-refused')}>
+          <td />
+          <td colSpan={3}>{notes.join(', ')}</td>
+        </tr>
+      ) : null}
+    </>
   );
+}
+
+/** What else is to be said of a reading, under it. */
+function notesOf(capture: RunCapture, timeZone: string): string[] {
+  const { excluded, refusal, referenceTemperatureC: thermometer, referenceConductivityUsCm: meter } = capture;
+  const isUnsettled = !capture.isStable && capture.step !== 'as-found-process';
+  return [
+    excluded &&
+      `excluded: ${labelOf(EXCLUSION_LABELS, excluded.code)}${excluded.note ? `, ${excluded.note}` : ''}`,
+    refusal && `captured at ${formatTime(capture.capturedAt, { timeZone })}, see below`,
+    isUnsettled && 'not stable within the time-out',
+    capture.source === 'typed' && 'typed',
+    thermometer !== null && `thermometer ${formatNumber(thermometer, { decimals: 2, unit: '°C' })}`,
+    meter !== null && `portable meter ${benchConductivity(meter, benchUnit([meter]))} ${benchUnit([meter])}`,
+  ].filter((note): note is string => typeof note === 'string');
 }

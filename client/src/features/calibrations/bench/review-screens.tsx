@@ -1,5 +1,6 @@
 import { useState } from 'react';
 import { formatNumber, formatSigned } from '../../../../../shared/format/numbers.ts';
+import { changeWords } from '../../../../../shared/format/calibration-words.ts';
 import { Button } from '../../../components/ui/button.tsx';
 import { Field } from '../../../components/ui/field.tsx';
 import { FormRefusal } from '../../../components/ui/form-refusal.tsx';
@@ -8,7 +9,6 @@ import { useSubmission } from '../../../lib/use-submission.ts';
 import { useCalibrationDeed } from '../api.ts';
 import { BudgetBars } from '../record/budget-bars.tsx';
 import { ThreeStates } from '../record/three-states.tsx';
-import { changeWords } from '../words.ts';
 import { useBench } from './bench-context.ts';
 import { BenchFoot } from './bench-foot.tsx';
 import { RefusedDeeds } from './refused-deeds.tsx';

@@ -1,20 +1,16 @@
-import { formatNumber, formatSigned } from '../../../../../shared/format/numbers.ts';
-import { classNames } from '../../../components/ui/button.tsx';
+import { formatNumber, MINUS, NO_VALUE } from '../../../../../shared/format/numbers.ts';
 import type { SettleLimits, Settling } from './stability.ts';
 
 export interface SettlePanelProps {
   settling: Settling;
   limits: SettleLimits;
-  /** Seconds until "not stable" is the result. */
-  leftS: number;
-  isMuted: boolean;
-  onMute: (isMuted: boolean) => void;
+  /** Seconds until "not stable" is the result; null where one may capture at any time. */
+  leftS: number | null;
 }
 
 /** Stable or not yet, in words, with what decides it: range and slope of both quantities against their limits. */
-export function SettlePanel({ settling, limits, leftS, isMuted, onMute }: SettlePanelProps) {
+export function SettlePanel({ settling, limits, leftS }: SettlePanelProps) {
   const { conductivity, temperature, exceeded, state } = settling;
-  const percent = (value: number | undefined) => formatNumber(value, { decimals: 2, unit: '%' });
   const mark = (quantity: (typeof exceeded)[number]) =>
     exceeded.includes(quantity) ? 'is-exceeded' : undefined;
   return (
@@ -22,41 +18,45 @@ export function SettlePanel({ settling, limits, leftS, isMuted, onMute }: Settle
       <p className="bench-settle">
         <b aria-live="polite">{state === 'stable' ? 'Stable' : 'Not stable yet'}</b>
         <span>{restWords(settling, limits, leftS)}</span>
-        <button
-          type="button"
-          className="bench-sound"
-          aria-pressed={!isMuted}
-          onClick={() => onMute(!isMuted)}
-        >
-          {isMuted ? 'sound off' : 'sound on'}
-        </button>
       </p>
       <dl className="bench-settle-figures">
         <dt>κ</dt>
-        <dd className={classNames(mark('conductivity-range'))}>
-          range {percent(conductivity?.rangePercent)} of {percent(limits.stabilityRangePercent)}
+        <dd className={mark('conductivity-range')}>
+          range {bounded(conductivity?.rangePercent)} of{' '}
+          {formatNumber(limits.stabilityRangePercent, { decimals: 2, unit: '%' })}
         </dd>
-        <dd className={classNames(mark('conductivity-slope'))}>
-          {conductivity ? formatSigned(conductivity.slopePercentPerMin, 2) : '–'} of ±
+        <dd className={mark('conductivity-slope')}>
+          slope {bounded(conductivity?.slopePercentPerMin)} of{' '}
           {formatNumber(limits.stabilitySlopePercentPerMin, { decimals: 2, unit: '%/min' })}
         </dd>
         <dt>T</dt>
-        <dd className={classNames(mark('temperature-range'))}>
-          range {formatNumber(temperature?.range, { decimals: 2 })}
+        <dd className={mark('temperature-range')}>
+          range {bounded(temperature?.range)}
           {Number.isFinite(limits.temperatureRangeC)
             ? ` of ${formatNumber(limits.temperatureRangeC, { decimals: 2, unit: '°C' })}`
             : ' °C'}
         </dd>
-        <dd>{temperature ? formatSigned(temperature.slopePerMin, 2) : '–'} °C/min</dd>
+        <dd>slope {bounded(temperature?.slopePerMin)} °C/min</dd>
       </dl>
     </>
   );
 }
 
-function restWords(settling: Settling, limits: SettleLimits, leftS: number): string {
+/** Beyond this a figure that should be near zero needs no decimals to be read. */
+const FAR = 10;
+
+function bounded(value: number | undefined): string {
+  if (value === undefined) return NO_VALUE;
+  if (Math.abs(value) >= FAR) return `${value < 0 ? '<' + MINUS : '>'}${FAR}`;
+  return formatNumber(value, { decimals: 2 });
+}
+
+function restWords(settling: Settling, limits: SettleLimits, leftS: number | null): string {
   if (settling.state === 'stable') return '';
-  if (leftS <= 0) return 'time-out reached';
-  const left = `time-out in ${Math.floor(leftS / 60)}:${String(Math.floor(leftS % 60)).padStart(2, '0')}`;
   const missingS = Math.ceil(limits.stabilityWindowS - settling.filledS);
-  return settling.state === 'gathering' && missingS > 0 ? `${missingS} s more · ${left}` : left;
+  const more = settling.state === 'gathering' && missingS > 0 ? `${missingS} s more` : null;
+  if (leftS === null) return more ?? '';
+  if (leftS <= 0) return 'time-out reached';
+  const seconds = String(Math.floor(leftS % 60)).padStart(2, '0');
+  return [more, `time-out ${Math.floor(leftS / 60)}:${seconds}`].filter(Boolean).join(' · ');
 }

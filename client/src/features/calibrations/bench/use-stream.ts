@@ -10,10 +10,15 @@ export interface Stream {
   points: readonly LivePoint[];
   /** The newest reading, or null when the stream is silent: then readings are typed. */
   reading: LivePoint | null;
+  /** The page has only just begun to listen: too early to call the probe silent. */
+  isWaiting: boolean;
   /** Why there is no reading, in words. */
   silence: string | null;
   nowMs: number;
 }
+
+/** Most devices send within this time. */
+const PATIENCE_MS = 15_000;
 
 /** The probe's own readings as they come. Silence is judged by this phone's clock: the device's may be wrong. */
 export function useStream(probeId: number): Stream {
@@ -29,17 +34,15 @@ export function useStream(probeId: number): Stream {
   }
   const silentMs = nowMs - heard.atMs;
   if (!last) {
-    return {
-      points,
-      reading: null,
-      silence: silentMs < 10_000 ? 'waiting for the probe' : 'no reading comes',
-      nowMs,
-    };
+    const isWaiting = silentMs < PATIENCE_MS;
+    const silence = isWaiting ? 'waiting for the probe' : 'no reading comes';
+    return { points, reading: null, isWaiting, silence, nowMs };
   }
   const isSilent = silentMs > silenceLimitMs(points);
   return {
     points,
     reading: isSilent ? null : last,
+    isWaiting: false,
     silence: isSilent ? `no reading for ${formatDuration(silentMs / 1000)}` : null,
     nowMs,
   };

@@ -2,10 +2,10 @@ import { useQuery } from '@tanstack/react-query';
 import type { Verdict } from '../../../../../shared/contracts/calibrations.ts';
 import { capitalise, OUTCOME_LABELS } from '../../../../../shared/format/labels.ts';
 import { formatProbability } from '../../../../../shared/format/numbers.ts';
+import { verdictSentence, verdictStrip } from '../../../../../shared/format/calibration-words.ts';
 import { ToleranceStrip } from '../../../components/strip/tolerance-strip.tsx';
 import { OutcomeMark } from '../../../components/ui/marks.tsx';
 import { calibrationsBrief } from '../api.ts';
-import { verdictSentence, verdictStrip } from '../words.ts';
 import { useBench } from './bench-context.ts';
 
 export interface VerdictPanelProps {

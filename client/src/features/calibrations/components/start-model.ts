@@ -1,47 +1,67 @@
+import type { Bottle } from '../../../../../shared/contracts/bottles.ts';
 import type { Instrument } from '../../../../../shared/contracts/instruments.ts';
-import type { ProbeRow } from '../../../../../shared/contracts/probes.ts';
+import type { Probe } from '../../../../../shared/contracts/probes.ts';
 import type { Standard } from '../../../../../shared/contracts/standards.ts';
 
 export interface StartDraft {
   standardId: number | null;
   bottleId: number | null;
-  /** As scanned, until the bottles of its lot are known. */
-  bottleCode: string | null;
   secondStandardId: number | null;
   thermometerId: number | null;
 }
 
-/** Lots the probe can read, usable ones first, fullest validity first. */
-export function fittingLots(
-  lots: readonly Standard[],
-  probe: Pick<ProbeRow, 'rangeLowUsCm' | 'rangeHighUsCm'>,
-): Standard[] {
+type Range = Pick<Probe, 'rangeLowUsCm' | 'rangeHighUsCm'>;
+
+/** Lots the probe can read, usable ones first, the longest valid first. */
+export function fittingLots(lots: readonly Standard[], probe: Range): Standard[] {
   return lots
     .filter((lot) => {
       const value = lot.certifiedConductivityUsCm;
       return value === null || (value >= probe.rangeLowUsCm && value <= probe.rangeHighUsCm);
     })
-    .toSorted((a, b) => Number(b.isUsable) - Number(a.isUsable) || (a.expiresOn < b.expiresOn ? -1 : 1));
+    .toSorted((a, b) => Number(b.isUsable) - Number(a.isUsable) || (a.expiresOn > b.expiresOn ? -1 : 1));
 }
 
-/** What was used last time, as far as it may still be used; the second lot is another one at another level. */
-export function firstChoice(
-  fitting: readonly Standard[],
-  thermometers: readonly Instrument[],
-  lastLotCode: string | null,
-): StartDraft {
-  const usable = fitting.filter((lot) => lot.isUsable);
-  const first = usable.find((lot) => lot.code === lastLotCode) ?? usable[0] ?? null;
-  const others = usable.filter((lot) => lot.id !== first?.id);
-  const level = (lot: Standard) => `${lot.basis}/${lot.nominal ?? lot.certifiedConductivityUsCm}`;
-  const second = others.find((lot) => first && level(lot) !== level(first)) ?? others[0] ?? null;
+export interface Circumstances {
+  fitting: readonly Standard[];
+  bottles: readonly Bottle[];
+  thermometers: readonly Instrument[];
+  lastLotCode: string | null;
+  /** What the probe reads at work, raw; null when that is not known. */
+  workingUsCm: number | null;
+}
+
+/**
+ * What was used last time, as far as it may still be used; else the lot with a bottle at hand that is nearest to what
+ * the probe reads at work. The second lot is another one, at another level where there is one.
+ */
+export function firstChoice(given: Circumstances): StartDraft {
+  const { fitting, bottles, thermometers, lastLotCode, workingUsCm } = given;
+  const byNearness = fitting
+    .filter((lot) => lot.isUsable)
+    .toSorted((a, b) => distance(a, workingUsCm) - distance(b, workingUsCm));
+  const first =
+    byNearness.find((lot) => lot.code === lastLotCode) ??
+    byNearness.find((lot) => bottles.some((bottle) => bottle.standardId === lot.id)) ??
+    byNearness[0] ??
+    null;
+  const others = byNearness.filter((lot) => lot.id !== first?.id);
+  const second = others.find((lot) => first && levelOf(lot) !== levelOf(first)) ?? others[0] ?? null;
   return {
     standardId: first?.id ?? null,
-    bottleId: null,
-    bottleCode: null,
+    bottleId: bottles.find((bottle) => bottle.standardId === first?.id)?.id ?? null,
     secondStandardId: second?.id ?? null,
     thermometerId: finest(thermometers)?.id ?? null,
   };
+}
+
+const levelOf = (lot: Standard): number | null => lot.certifiedConductivityUsCm ?? lot.nominal;
+
+/** Decades between a lot and the working value. */
+function distance(lot: Standard, workingUsCm: number | null): number {
+  const value = lot.certifiedConductivityUsCm;
+  if (value === null || value <= 0 || workingUsCm === null || workingUsCm <= 0) return Infinity;
+  return Math.abs(Math.log10(value / workingUsCm));
 }
 
 function finest(thermometers: readonly Instrument[]): Instrument | null {

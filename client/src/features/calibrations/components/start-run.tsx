@@ -3,13 +3,14 @@ import { useState } from 'react';
 import { useNavigate } from 'react-router-dom';
 import type { Bottle } from '../../../../../shared/contracts/bottles.ts';
 import type { Instrument } from '../../../../../shared/contracts/instruments.ts';
-import type { ProbeRow } from '../../../../../shared/contracts/probes.ts';
+import type { Probe } from '../../../../../shared/contracts/probes.ts';
 import type { Standard } from '../../../../../shared/contracts/standards.ts';
 import { formatDate } from '../../../../../shared/format/dates.ts';
 import { PROBE_KIND_LABELS } from '../../../../../shared/format/labels.ts';
 import { formatNumber } from '../../../../../shared/format/numbers.ts';
 import { Answer } from '../../../components/ui/answer.tsx';
 import { Button, ButtonLink } from '../../../components/ui/button.tsx';
+import { Checkbox } from '../../../components/ui/checkbox.tsx';
 import { EmptyFace } from '../../../components/ui/faces.tsx';
 import { Field } from '../../../components/ui/field.tsx';
 import { FormRefusal } from '../../../components/ui/form-refusal.tsx';
@@ -32,7 +33,7 @@ import type { OverrideDraft } from './override-fields.tsx';
 import { NO_OVERRIDE, OverrideFields } from './override-fields.tsx';
 
 export interface StartRunProps {
-  probe: ProbeRow;
+  probe: Probe;
   userId: number;
 }
 
@@ -40,8 +41,11 @@ export interface StartRunProps {
 export function StartRun({ probe, userId }: StartRunProps) {
   const lots = useQuery(releasedLots());
   const thermometers = useQuery(usableThermometers());
+  const bottles = useQuery(usableBottles());
   const earlier = useQuery(calibrationsBrief({ probeId: probe.id, limit: 5 }));
   const running = earlier.data?.items.find((row) => row.status === 'running');
+  // What was stopped or returned says nothing about what to use.
+  const last = earlier.data?.items.find((row) => row.approvedAt !== null || row.status === 'signed') ?? null;
   const place = probe.placement;
   return (
     <>
@@ -59,7 +63,7 @@ export function StartRun({ probe, userId }: StartRunProps) {
               {probe.tag}, serial {probe.serial}
             </b>
             , {PROBE_KIND_LABELS[probe.kind]}, {place ? place.siteName : 'not installed'}.{' '}
-            {lastWords(earlier.data?.items[0] ?? null)}
+            {earlier.isSuccess ? lastWords(last) : null}
           </>
         }
       />
@@ -74,16 +78,21 @@ export function StartRun({ probe, userId }: StartRunProps) {
         />
       ) : (
         <Answer query={lots} what="the reference solutions">
-          {({ items }) => (
-            <Answer query={thermometers} what="the thermometers">
-              {(found) => (
-                <StartForm
-                  probe={probe}
-                  userId={userId}
-                  lots={items}
-                  thermometers={found.items}
-                  lastLotCode={earlier.data?.items[0]?.lotCode ?? null}
-                />
+          {(known) => (
+            <Answer query={bottles} what="the bottles">
+              {(atHand) => (
+                <Answer query={thermometers} what="the thermometers">
+                  {(instruments) => (
+                    <StartForm
+                      probe={probe}
+                      userId={userId}
+                      lots={known.items}
+                      bottles={atHand.items}
+                      thermometers={instruments.items}
+                      lastLotCode={last?.lotCode ?? null}
+                    />
+                  )}
+                </Answer>
               )}
             </Answer>
           )}
@@ -101,30 +110,46 @@ function lastWords(last: { startedAt: string; performer: string } | null): strin
 
 interface StartFormProps extends StartRunProps {
   lots: readonly Standard[];
+  bottles: readonly Bottle[];
   thermometers: readonly Instrument[];
   lastLotCode: string | null;
 }
 
-function StartForm({ probe, userId, lots, thermometers, lastLotCode }: StartFormProps) {
+function StartForm({ probe, userId, lots, bottles, thermometers, lastLotCode }: StartFormProps) {
   const navigate = useNavigate();
   const start = useStartCalibration(userId);
   const fitting = fittingLots(lots, probe);
-  const [draft, setDraft] = useState<StartDraft>(() => firstChoice(fitting, thermometers, lastLotCode));
+  const [draft, setDraft] = useState<StartDraft>(() =>
+    firstChoice({
+      fitting,
+      bottles,
+      thermometers,
+      lastLotCode,
+      workingUsCm: probe.reading?.conductivityUsCm ?? null,
+    }),
+  );
   const [override, setOverride] = useState<OverrideDraft>(NO_OVERRIDE);
+  const [showsAll, setShowsAll] = useState(false);
   const [isScanning, setIsScanning] = useState(false);
   // One key for this visit: pressed twice in a dead spot, the run still begins once.
   const [key] = useState(() => crypto.randomUUID());
-  const bottles = useQuery({ ...usableBottles(draft.standardId ?? 0), enabled: draft.standardId !== null });
   const { isPending, refusal, issueFor, submit } = useSubmission();
+  const shown = showsAll ? fitting : fitting.filter((lot) => lot.isUsable);
   const isUnusable = fitting.some(
     (lot) => [draft.standardId, draft.secondStandardId].includes(lot.id) && !lot.isUsable,
   );
-  const ownBottles = bottles.data?.items ?? [];
-  const bottleId = draft.bottleId ?? ownBottles[0]?.id ?? null;
+  const ownBottles = bottles.filter((bottle) => bottle.standardId === draft.standardId);
+  const takeLot = (standardId: number | null) =>
+    setDraft({
+      ...draft,
+      standardId,
+      bottleId: bottles.find((bottle) => bottle.standardId === standardId)?.id ?? null,
+      secondStandardId: draft.secondStandardId === standardId ? null : draft.secondStandardId,
+    });
   const scanned = (code: string) => {
     setIsScanning(false);
-    const lot = lots.find((one) => code === one.code || code.startsWith(`${one.code}/`));
-    if (lot) setDraft({ ...draft, standardId: lot.id, bottleId: null, bottleCode: code });
+    const bottle = bottles.find((one) => code.includes(one.code));
+    if (bottle) setDraft({ ...draft, standardId: bottle.standardId, bottleId: bottle.id });
   };
   const begin = () =>
     submit(
@@ -133,7 +158,7 @@ function StartForm({ probe, userId, lots, thermometers, lastLotCode }: StartForm
           key,
           probeId: probe.id,
           standardId: draft.standardId!,
-          bottleId: ownBottles.find((one) => one.code === draft.bottleCode)?.id ?? bottleId,
+          bottleId: draft.bottleId,
           secondStandardId: draft.secondStandardId,
           thermometerId: draft.thermometerId,
           override: isUnusable
@@ -159,20 +184,14 @@ function StartForm({ probe, userId, lots, thermometers, lastLotCode }: StartForm
         error={issueFor('standardId')}
         hint="For as found, cleaned and as left."
       >
-        <LotSelect
-          lots={fitting}
-          value={draft.standardId}
-          onChange={(standardId) => setDraft({ ...draft, standardId, bottleId: null, bottleCode: null })}
-        />
+        <LotSelect lots={shown} value={draft.standardId} onChange={takeLot} />
       </Field>
       <Field label="Bottle" error={issueFor('bottleId')} isOptional>
         <Select
-          value={String(ownBottles.find((one) => one.code === draft.bottleCode)?.id ?? bottleId ?? '')}
+          value={String(draft.bottleId ?? '')}
           placeholder={ownBottles.length === 0 ? 'no usable bottle on record' : 'without a bottle on record'}
           options={ownBottles.map((bottle) => ({ value: String(bottle.id), label: bottleWords(bottle) }))}
-          onChange={(event) =>
-            setDraft({ ...draft, bottleId: Number(event.target.value) || null, bottleCode: null })
-          }
+          onChange={(event) => setDraft({ ...draft, bottleId: Number(event.target.value) || null })}
         />
       </Field>
       {canScan() && !isScanning ? (
@@ -184,7 +203,7 @@ function StartForm({ probe, userId, lots, thermometers, lastLotCode }: StartForm
         hint="Another lot, at another level: it shows whether the first one can be believed."
       >
         <LotSelect
-          lots={fitting.filter((lot) => lot.id !== draft.standardId)}
+          lots={shown.filter((lot) => lot.id !== draft.standardId)}
           value={draft.secondStandardId}
           placeholder="none"
           onChange={(secondStandardId) => setDraft({ ...draft, secondStandardId })}
@@ -200,7 +219,7 @@ function StartForm({ probe, userId, lots, thermometers, lastLotCode }: StartForm
       </Field>
       {isUnusable ? <OverrideFields draft={override} onChange={setOverride} issueFor={issueFor} /> : null}
       <FormRefusal>{refusal}</FormRefusal>
-      <Button kind="bench" type="submit" isPending={isPending}>
+      <Button kind="primary" type="submit" className="start-begin" isPending={isPending}>
         Begin
       </Button>
     </form>

@@ -61,6 +61,8 @@ export function createDeedQueue({ store, send, now, later }: DeedQueueOptions): 
   let isSending = false;
   let pauseMs = FIRST_PAUSE_MS;
   let callOff: (() => void) | null = null;
+  /** A deed added while the store is read would be missing from what was read. */
+  let reading: Promise<void> = Promise.resolve();
 
   const tell = (change: Partial<QueueSnapshot>): void => {
     state = { ...state, ...change };
@@ -76,27 +78,30 @@ export function createDeedQueue({ store, send, now, later }: DeedQueueOptions): 
     pauseMs = Math.min(LONGEST_PAUSE_MS, pauseMs * 2);
   };
 
-  /** Settles one attempt; false ends this round. */
-  const settle = async (entry: QueuedDeed, outcome: SendOutcome): Promise<boolean> => {
-    if (outcome.kind === 'unreachable') {
-      pause();
-      return false;
-    }
-    if (outcome.kind === 'signed-out') {
-      tell({ isSignedOut: true });
-      return false;
-    }
+  /** Settles one attempt that reached the server. */
+  const settle = async (
+    entry: QueuedDeed,
+    outcome: Exclude<SendOutcome, { kind: 'unreachable' | 'signed-out' }>,
+  ): Promise<void> => {
     pauseMs = FIRST_PAUSE_MS;
     if (outcome.kind === 'accepted') {
       await store.remove(entry.order);
       const entries = state.entries.filter((one) => one.order !== entry.order);
-      tell({ entries, isSignedOut: false, lastSentAt: now() });
-      return true;
+      return tell({ entries, isSignedOut: false, lastSentAt: now() });
     }
     const refused = { ...entry, refusal: { code: outcome.code, reason: outcome.reason, at: now() } };
     await store.replace(refused);
     tell({ entries: withEntry(refused), isSignedOut: false });
-    return true;
+  };
+
+  /** Sends until nothing waits or an attempt fails; says how it ended. */
+  const sendAll = async (): Promise<'done' | 'unreachable' | 'signed-out'> => {
+    for (let entry = nextEntry(); entry; entry = nextEntry()) {
+      const outcome = await send(entry.deed);
+      if (outcome.kind === 'unreachable' || outcome.kind === 'signed-out') return outcome.kind;
+      await settle(entry, outcome);
+    }
+    return 'done';
   };
 
   const work = async (): Promise<void> => {
@@ -104,14 +109,16 @@ export function createDeedQueue({ store, send, now, later }: DeedQueueOptions): 
     isSending = true;
     callOff?.();
     callOff = null;
+    let end: Awaited<ReturnType<typeof sendAll>> = 'unreachable';
     try {
-      for (let entry = nextEntry(); entry; entry = nextEntry()) {
-        const goesOn = await settle(entry, await send(entry.deed));
-        if (!goesOn) break;
-      }
+      end = await sendAll();
     } finally {
       isSending = false;
     }
+    // One that was added just as the last round ended.
+    if (end === 'done' && nextEntry()) return work();
+    if (end === 'unreachable') pause();
+    if (end === 'signed-out') tell({ isSignedOut: true });
   };
 
   return {
@@ -121,17 +128,19 @@ export function createDeedQueue({ store, send, now, later }: DeedQueueOptions): 
       return () => listeners.delete(listener);
     },
     add: async (deed) => {
-      if (person === null) throw new Error('Nobody is signed in, so nothing can be captured.');
-      const entry = await store.add({ userId: person, deed, refusal: null });
+      const owner = person;
+      if (owner === null) throw new Error('Nobody is signed in, so nothing can be captured.');
+      await reading;
+      const entry = await store.add({ userId: owner, deed, refusal: null });
       tell({ entries: withEntry(entry) });
       void work();
     },
     start: (userId) => {
       person = userId;
-      void store.all().then((entries) => {
+      reading = store.all().then((entries) => {
         tell({ entries: [...entries].sort((a, b) => a.order - b.order), isRead: true, isSignedOut: false });
-        return work();
       });
+      void reading.then(work);
       return () => {
         person = null;
         callOff?.();

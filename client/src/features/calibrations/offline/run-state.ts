@@ -81,12 +81,18 @@ function withDeed(view: RunView, entry: QueuedDeed): RunView {
 /** Steps are done in their order only: a deed for another step changes nothing here, the server will say why. */
 function withStepDone(view: RunView, step: RunStep, capturedAt: string, data: unknown): RunView {
   if (view.currentStep !== step) return view;
-  const at = view.steps.findIndex((one) => one.step === step);
-  const steps = view.steps.map((one, i) => {
+  const known = isLeft(data) ? view.steps.filter((one) => one.step !== 'as-left') : view.steps;
+  const at = known.findIndex((one) => one.step === step);
+  const steps = known.map((one, i) => {
     if (i === at) return { ...one, state: 'done' as const, capturedAt, data };
     return i === at + 1 ? { ...one, state: 'current' as const } : one;
   });
   return { ...view, steps, currentStep: steps[at + 1]?.step ?? null };
+}
+
+/** A probe left as it is was not touched after the cleaned state: as left equals it and is not captured again. */
+function isLeft(data: unknown): boolean {
+  return typeof data === 'object' && data !== null && 'decision' in data && data.decision === 'leave';
 }
 
 function fromServer(capture: Capture): RunCapture {

@@ -1,7 +1,7 @@
 import type { Verdict } from '../../../../../shared/contracts/calibrations.ts';
 import { formatNumber } from '../../../../../shared/format/numbers.ts';
+import { decimalsOf } from '../../../../../shared/format/calibration-words.ts';
 import { SectionTitle } from '../../../components/ui/page-head.tsx';
-import { decimalsOf } from '../words.ts';
 
 /** Longest bar, px; the others keep its proportion. */
 const LONGEST_PX = 120;

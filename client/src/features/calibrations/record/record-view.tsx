@@ -9,12 +9,13 @@ import {
   PROBE_KIND_LABELS,
 } from '../../../../../shared/format/labels.ts';
 import { formatProbability } from '../../../../../shared/format/numbers.ts';
+import { verdictSentence, verdictStrip } from '../../../../../shared/format/calibration-words.ts';
 import { PageStrip } from '../../../components/strip/tolerance-strip.tsx';
 import { Crumbs } from '../../../components/ui/page-head.tsx';
 import { useDocumentTitle } from '../../../lib/use-document-title.ts';
 import { useHeadingFocus } from '../../../lib/use-heading-focus.ts';
 import { paths } from '../../../paths.ts';
-import { STATUS_LABELS, verdictSentence, verdictStrip } from '../words.ts';
+import { STATUS_LABELS } from '../words.ts';
 import { BudgetBars } from './budget-bars.tsx';
 import { ReferenceChain } from './reference-chain.tsx';
 import { ReplicatesSection } from './replicates-section.tsx';

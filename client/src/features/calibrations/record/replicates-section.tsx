@@ -2,9 +2,14 @@ import type { Calibration, Capture } from '../../../../../shared/contracts/calib
 import { formatTime } from '../../../../../shared/format/dates.ts';
 import { capitalise } from '../../../../../shared/format/labels.ts';
 import { formatNumber, formatSigned } from '../../../../../shared/format/numbers.ts';
+import {
+  EXCLUSION_LABELS,
+  SOURCE_LABELS,
+  STEP_LABELS,
+  benchConductivity,
+  benchUnit,
+} from '../../../../../shared/format/calibration-words.ts';
 import { SectionTitle } from '../../../components/ui/page-head.tsx';
-import { benchConductivity, benchUnit } from '../bench/bench-figures.ts';
-import { EXCLUSION_LABELS, SOURCE_LABELS, STEP_LABELS } from '../words.ts';
 
 /** A capture that reached the server later than this was made without network. */
 const OFFLINE_MS = 60_000;
@@ -76,7 +81,7 @@ function ReplicateLine({ capture, unit, timeZone }: ReplicateLineProps) {
       <td className="is-words">
         {[
           SOURCE_LABELS[capture.source],
-          capture.isStable ? null : 'not stable within the time-out',
+          capture.isStable || capture.step === 'as-found-process' ? null : 'not stable within the time-out',
           capture.referenceTemperatureC === null
             ? null
             : `thermometer ${formatNumber(capture.referenceTemperatureC, { decimals: 2, unit: '°C' })}`,

@@ -1,10 +1,10 @@
 import type { Calibration } from '../../../../../shared/contracts/calibrations.ts';
 import { formatDate, formatDateTime } from '../../../../../shared/format/dates.ts';
 import { formatNumber, formatSigned } from '../../../../../shared/format/numbers.ts';
+import { COMMAND_LABELS, changeWords } from '../../../../../shared/format/calibration-words.ts';
 import type { Definition } from '../../../components/ui/definition-list.tsx';
 import { DefinitionList } from '../../../components/ui/definition-list.tsx';
 import { SectionTitle } from '../../../components/ui/page-head.tsx';
-import { changeWords, COMMAND_LABELS } from '../words.ts';
 
 /** What follows from the three states: fouling and drift apart, what was changed, and whether the device has it. */
 export function RunFacts({ run, timeZone }: { run: Calibration; timeZone: string }) {

@@ -2,8 +2,8 @@ import { Link } from 'react-router-dom';
 import type { Calibration } from '../../../../../shared/contracts/calibrations.ts';
 import { formatDateTime } from '../../../../../shared/format/dates.ts';
 import { labelOf, ROLE_LABELS } from '../../../../../shared/format/labels.ts';
+import { MEANING_LABELS } from '../../../../../shared/format/calibration-words.ts';
 import { paths } from '../../../paths.ts';
-import { MEANING_LABELS } from '../words.ts';
 
 /** Who answers for it, in which words, and whether it changed since. */
 export function Signatures({ run, timeZone }: { run: Calibration; timeZone: string }) {

@@ -1,7 +1,7 @@
 import type { Calibration } from '../../../../../shared/contracts/calibrations.ts';
 import { formatDateTime, formatTime } from '../../../../../shared/format/dates.ts';
+import { STEP_LABELS } from '../../../../../shared/format/calibration-words.ts';
 import { SectionTitle } from '../../../components/ui/page-head.tsx';
-import { STEP_LABELS } from '../words.ts';
 
 type Step = Calibration['steps'][number];
 

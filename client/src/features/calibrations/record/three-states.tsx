@@ -1,10 +1,15 @@
 import type { Calibration, Verdict } from '../../../../../shared/contracts/calibrations.ts';
 import { capitalise, OUTCOME_LABELS } from '../../../../../shared/format/labels.ts';
 import { formatNumber, formatSigned } from '../../../../../shared/format/numbers.ts';
+import {
+  benchConductivity,
+  benchUnit,
+  decimalsOf,
+  verdictStrip,
+} from '../../../../../shared/format/calibration-words.ts';
 import { ToleranceStrip } from '../../../components/strip/tolerance-strip.tsx';
+import { useIsNarrow } from '../../../lib/use-width.ts';
 import { SectionTitle } from '../../../components/ui/page-head.tsx';
-import { benchConductivity, benchUnit } from '../bench/bench-figures.ts';
-import { decimalsOf, verdictStrip } from '../words.ts';
 
 interface StateRow {
   name: string;
@@ -15,34 +20,38 @@ interface StateRow {
 
 /** As found, cleaned, as left: what the probe showed, what the solution is, and the error between them. */
 export function ThreeStates({ run, isStacked = false }: { run: Calibration; isStacked?: boolean }) {
+  const [ref, isNarrow] = useIsNarrow<HTMLElement>();
   const rows = stateRows(run);
   const unit = benchUnit(rows.map((row) => row.verdict?.meanUsCm ?? null));
   const strip = (row: StateRow) =>
     row.verdict ? (
       <ToleranceStrip {...verdictStrip(row.verdict, run.tolerancePercent, capitalise(row.name))} />
     ) : null;
-  if (isStacked) {
+  if (isStacked || isNarrow) {
     return (
-      <ul className="three-states">
-        {rows.map((row) => (
-          <li key={row.name}>
-            <b>{capitalise(row.name)}</b>
-            {row.verdict ? (
-              <>
-                <span>{errorWords(row.verdict)}</span>
-                {strip(row)}
-                <small>{OUTCOME_LABELS[row.verdict.outcome]}</small>
-              </>
-            ) : (
-              <small>{row.words}</small>
-            )}
-          </li>
-        ))}
-      </ul>
+      <div ref={ref}>
+        {isStacked ? null : <SectionTitle>Three states</SectionTitle>}
+        <ul className="three-states">
+          {rows.map((row) => (
+            <li key={row.name}>
+              <b>{capitalise(row.name)}</b>
+              {row.verdict ? (
+                <>
+                  <span>{errorWords(row.verdict)}</span>
+                  {strip(row)}
+                  <small>{OUTCOME_LABELS[row.verdict.outcome]}</small>
+                </>
+              ) : (
+                <small>{row.words}</small>
+              )}
+            </li>
+          ))}
+        </ul>
+      </div>
     );
   }
   return (
-    <section>
+    <section ref={ref}>
       <SectionTitle note={`${unit}, raw, at the temperature of the solution`}>Three states</SectionTitle>
       <div className="run-table-frame">
         <table className="run-table">
