@@ -11,8 +11,11 @@ const heightMm = 29;
 const codeMm = 23;
 /** Modules of white that scanners need around the code [ISO/IEC 18004, 6.3.8]. */
 const quietModules = 4;
-/** Characters that fit beside the code at 2.5 mm. */
-const lineLength = 26;
+/** Right of the code; a monospaced letter is 0.6 of its size wide. */
+const textMm = 34.5;
+const lineSizeMm = 2.1;
+const lineLength = Math.floor(textMm / (0.6 * lineSizeMm));
+const codeSizeMm = (code: string): number => Math.min(3.9, textMm / (0.6 * code.length));
 
 const escaped = (text: string): string => text.replace(/[<>&"']/g, (mark) => `&#${mark.charCodeAt(0)};`);
 
@@ -41,26 +44,29 @@ function wrapped(text: string): string[] {
 /** Opening is often written by hand on the spot: the line for it is on every label. */
 function lines(row: BottleRow): string[] {
   const opened = row.openedAt
-    ? `opened ${formatDate(row.openedAt)}, use by ${formatDate(row.useByOn)}`
-    : 'opened on ________________';
+    ? [`opened ${formatDate(row.openedAt)}`, `use by ${formatDate(row.useByOn)}`]
+    : ['opened ____________________'];
   return [
     ...wrapped(labelOfLot(row)),
     ...(row.isInHouse ? [inHouseWords] : []),
-    `${formatNumber(row.volumeMl)} mL, lot expires ${formatDate(row.lotExpiresOn)}`,
-    opened,
+    `${formatNumber(row.volumeMl)} mL, until ${formatDate(row.lotExpiresOn)}`,
+    ...opened,
   ];
 }
 
 export function labelSvg(row: BottleRow): string {
   const { path, size } = pathOf(row.code);
   const text = lines(row)
-    .map((line, index) => `<text x="26.5" y="${10.5 + index * 3.2}" font-size="2.4">${escaped(line)}</text>`)
+    .map(
+      (line, index) =>
+        `<text x="26.5" y="${10 + index * 2.7}" font-size="${lineSizeMm}">${escaped(line)}</text>`,
+    )
     .join('');
   return (
     `<svg xmlns="http://www.w3.org/2000/svg" width="${widthMm}mm" height="${heightMm}mm" viewBox="0 0 ${widthMm} ${heightMm}" role="img" aria-label="Label of bottle ${escaped(row.code)}">` +
     `<rect width="${widthMm}" height="${heightMm}" fill="#fff"/>` +
     `<svg x="2" y="3" width="${codeMm}" height="${codeMm}" viewBox="0 0 ${size} ${size}" shape-rendering="crispEdges"><path d="${path}" fill="#000"/></svg>` +
-    `<g font-family="'Roboto Mono', ui-monospace, monospace" fill="#000"><text x="26.5" y="6.5" font-size="3.9" font-weight="700">${escaped(row.code)}</text>${text}</g>` +
+    `<g font-family="'Roboto Mono', ui-monospace, monospace" fill="#000"><text x="26.5" y="6.5" font-size="${codeSizeMm(row.code)}" font-weight="700">${escaped(row.code)}</text>${text}</g>` +
     '</svg>'
   );
 }

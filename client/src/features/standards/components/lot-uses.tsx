@@ -26,7 +26,9 @@ function recallWords({ ifRecalled }: StandardUses): { all: string; exception: st
     exception:
       bare === 0
         ? 'Every one of these probes has been compared with another lot since.'
-        : `${capitalise(countInWords(bare))} of them ${bare === 1 ? 'has' : 'have'} nothing newer: compare ${bare === 1 ? 'it' : 'them'} first.`,
+        : bare === probeCount
+          ? 'None of these probes has a newer comparison with another lot: compare them first.'
+          : `${capitalise(countInWords(bare))} of them ${bare === 1 ? 'has' : 'have'} nothing newer: compare ${bare === 1 ? 'it' : 'them'} first.`,
   };
 }
 

@@ -64,14 +64,12 @@ export function LotView({ lot, certificate, bottles, checks }: LotViewProps) {
           {certificate}
           <LotHistory lot={lot} />
           <TemperatureTable lot={lot} />
-          <div>
+          <div className="page-buttons justify-start">
             <ButtonLink to={paths.calculator.to({ calc: 'standard', by: 'lot', standardId: lot.id })}>
               Value at another temperature
             </ButtonLink>
             {lot.can.dilute ? (
-              <ButtonLink className="ml-2" to={paths.diluteStandard.to({ standardId: lot.id })}>
-                Dilute this lot
-              </ButtonLink>
+              <ButtonLink to={paths.diluteStandard.to({ standardId: lot.id })}>Dilute this lot</ButtonLink>
             ) : null}
           </div>
         </div>
