@@ -18,12 +18,14 @@ export default function LiveSitePage() {
   const sites = useQuery(sitesList());
   const hold = useHoldDialogs();
   useShowSite(siteId);
-  if (siteId === null) return <UnknownAddress home={paths.live.to()} />;
+  const unknown = <UnknownAddress home={paths.live.to()} />;
+  if (siteId === null) return unknown;
   return (
     <>
       <LiveSite
         key={siteId}
         siteId={siteId}
+        missing={unknown}
         name={sites.data?.items.find((site) => site.id === siteId)?.name ?? 'Live'}
         onHold={(row) => hold.ask(holdableOf(row))}
         onRelease={(row) => hold.release(holdableOf(row))}

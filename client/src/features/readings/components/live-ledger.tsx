@@ -93,7 +93,7 @@ function columnsFor(width: number, rows: readonly LiveRow[], actions: LiveAction
       key: 'strip',
       head: <StripHead />,
       headLabel: 'Last error between minus tolerance and plus tolerance',
-      width: isTight ? '124px' : '150px',
+      width: isTight ? '130px' : '150px',
       cell: (row) => <LiveStrip row={row} />,
     },
     width >= ROOM.trace && {

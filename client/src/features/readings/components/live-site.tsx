@@ -22,10 +22,12 @@ export interface LiveSiteProps extends LiveActions {
   firstStep?: ReactNode;
   /** Beside the foot: the wall display. */
   more?: ReactNode;
+  /** Where there is no such site, or not one this person may see. */
+  missing: ReactNode;
 }
 
 /** One site: the situation in a sentence, what needs a person, every point as it reads now. */
-export function LiveSite({ siteId, name, firstStep, more, ...actions }: LiveSiteProps) {
+export function LiveSite({ siteId, name, firstStep, more, missing, ...actions }: LiveSiteProps) {
   const query = useQuery(liveBoard(siteId));
   useWatchSite(siteId);
   const skew = query.data ? Date.parse(query.data.at) - query.dataUpdatedAt : 0;
@@ -34,6 +36,7 @@ export function LiveSite({ siteId, name, firstStep, more, ...actions }: LiveSite
       <Answer
         query={query}
         what="the readings"
+        missing={missing}
         loading={
           <>
             <PageHead name={name} sentence="Fetching what the probes say." isNamedInRail />
@@ -41,7 +44,13 @@ export function LiveSite({ siteId, name, firstStep, more, ...actions }: LiveSite
           </>
         }
       >
-        {(board) => <SiteBoard board={board} name={name} firstStep={firstStep} more={more} {...actions} />}
+        {(board) =>
+          board.sites.length === 0 ? (
+            missing
+          ) : (
+            <SiteBoard board={board} name={name} firstStep={firstStep} more={more} {...actions} />
+          )
+        }
       </Answer>
     </ClockSkew>
   );
@@ -77,4 +86,4 @@ function SiteBoard({ board, name, firstStep, more, onHold, onRelease }: SiteBoar
   );
 }
 
-type SiteBoardProps = Omit<LiveSiteProps, 'siteId'> & { board: LiveBoard };
+type SiteBoardProps = Omit<LiveSiteProps, 'siteId' | 'missing'> & { board: LiveBoard };
