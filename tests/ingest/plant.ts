@@ -51,7 +51,7 @@ export interface Plant {
     point?: Partial<Point>;
   }) => Promise<Station>;
   connect: (station: Pick<Station, 'name'>, options?: IClientOptions) => Promise<MqttClient>;
-  restartIngest: (limits?: IngestLimits) => Promise<void>;
+  restartIngest: (limits?: IngestLimits, whileAway?: () => Promise<void>) => Promise<void>;
   stop: () => Promise<void>;
 }
 
@@ -138,8 +138,9 @@ export async function startPlant({ limits, environment }: PlantOptions = {}): Pr
       clients.push(client);
       return client;
     },
-    restartIngest: async (next) => {
+    restartIngest: async (next, whileAway) => {
       await ingest.stop();
+      await whileAway?.();
       parts.health.length = 0;
       ingest = await startIngest(parts, next);
     },

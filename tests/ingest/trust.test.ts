@@ -27,6 +27,7 @@ const fit: TrustInput = {
     errorPercent: 0.4,
     outcome: 'within-clear',
   },
+  calibrationDueOn: null,
   fitness: settingDefaults['check-fitness'],
 };
 const reading = (more: Partial<NonNullable<TrustInput['reading']>>): Partial<TrustInput> => ({
@@ -124,6 +125,16 @@ describe('trust and its reason in words', () => {
       'check-overdue',
       'as left +0.4 % on 21 Oct, due since 20 Nov',
       { point: { ...fit.point, intervalDays: 30 } },
+    ],
+    [
+      'use-with-care',
+      'check-overdue',
+      'fitness not confirmed, due 30 Nov',
+      // A newer automatic check does not stand in for the calibration.
+      {
+        calibrationDueOn: '2026-11-30',
+        ...lastCheck({ at: new Date('2026-12-01T06:00:00Z'), stage: 'automatic' }),
+      },
     ],
     ['use-with-care', 'never-compared', 'never compared with a reference solution', { lastCheck: null }],
     [
