@@ -1,6 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { Suspense } from 'react';
-import { Outlet, useLocation, useNavigate } from 'react-router-dom';
+import { Outlet, useLocation } from 'react-router-dom';
 import { AppShell } from '../components/layout/app-shell.tsx';
 import { ErrorBoundary } from '../components/ui/error-boundary.tsx';
 import { LoadingFace } from '../components/ui/faces.tsx';
@@ -8,10 +8,10 @@ import { Switcher } from '../components/ui/switcher.tsx';
 import { ThemeToggle } from '../components/ui/theme-toggle.tsx';
 import { usePhoneQueue } from '../features/calibrations/offline/phone-queue.ts';
 import { GlobalSearch } from '../features/search/components/global-search.tsx';
-import { useSignOut } from '../features/sessions/api.ts';
 import { RequireSession } from '../features/sessions/components/require-session.tsx';
 import { roleWords } from '../features/sessions/model.ts';
 import { useSession } from '../features/sessions/session-context.ts';
+import { useLeave } from '../features/sessions/use-leave.ts';
 import { sitesList } from '../features/sites/api.ts';
 import { useSiteInView } from '../features/sites/site-in-view.ts';
 import { paths } from '../paths.ts';
@@ -33,13 +33,7 @@ function Shell() {
   const { pathname } = useLocation();
   const siteId = useSiteInView();
   const sites = useQuery(sitesList()).data?.items ?? [];
-  const signOut = useSignOut();
-  const navigate = useNavigate();
-  const leave = async () => {
-    await signOut.mutateAsync({ isEverywhere: false });
-    // Whoever signs in next begins at the start, not where this person was.
-    await navigate(paths.signIn.to(), { replace: true });
-  };
+  const leave = useLeave();
   return (
     <AppShell
       home={paths.live.to()}
@@ -51,7 +45,7 @@ function Shell() {
         role: roleWords(session, siteId),
         items: [
           { label: 'Your account', hint: session.user.email, to: paths.account.to() },
-          { label: 'Sign out', onSelect: () => void leave() },
+          { label: 'Sign out', onSelect: leave },
         ],
       }}
       personFoot={<ThemeToggle />}

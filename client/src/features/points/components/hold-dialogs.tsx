@@ -14,6 +14,15 @@ export interface HoldablePoint {
   hold: { userName: string; reason: string; untilAt: string } | null;
 }
 
+/** What this person may do about the hold of a point, as one button; null when nothing. */
+export function holdAction(
+  point: (HoldablePoint & { can: { hold: boolean; release: boolean } }) | null,
+  { ask, release }: Pick<HoldDialogs, 'ask' | 'release'>,
+): { label: string; onPress: () => void } | null {
+  if (point?.can.release) return { label: 'Put back into use…', onPress: () => release(point) };
+  return point?.can.hold ? { label: 'Hold this point…', onPress: () => ask(point) } : null;
+}
+
 export interface HoldDialogs {
   ask: (point: HoldablePoint) => void;
   release: (point: HoldablePoint) => void;
