@@ -96,6 +96,16 @@ describe('settling', () => {
     expect(settled.state).toBe('stable');
   });
 
+  it('takes nothing from before the step began, when the probe stood in another bottle', () => {
+    const settled = judgeSettling(
+      stream(60, () => 1000),
+      criteria,
+      Date.parse(at(45)),
+    );
+    expect(settled.filledS).toBe(15);
+    expect(settled.state).toBe('gathering');
+  });
+
   it('begins anew after a gap of half a window', () => {
     const points = [...stream(60, () => 1000), ...[95, 96, 97, 98].map((s) => aPoint(s, 1000))];
     const settled = judgeSettling(points, criteria);

@@ -10,6 +10,13 @@ export function useZoneOf(): (siteId: number) => string {
   return (siteId) => sites.find((site) => site.id === siteId)?.timeZone ?? 'UTC';
 }
 
+/** Whether this person works at the probes of a site. */
+export const mayCalibrateAt = ({ grants }: Session, siteId: number): boolean =>
+  grants.some(
+    (grant) =>
+      ['technician', 'manager'].includes(grant.role) && (grant.siteId === null || grant.siteId === siteId),
+  );
+
 /** Whether this person approves at a site. */
 export const mayReviewAt =
   ({ grants }: Session) =>

@@ -18,6 +18,8 @@ export function placeWords(step: CaptureStep, run: Calibration): string {
   switch (step) {
     case 'as-found-process':
       return 'in the process';
+    case 'temperature-sensor':
+      return 'beside the thermometer';
     case 'zero-in-air':
       return 'dry, in air';
     case 'second-point':

@@ -6,7 +6,7 @@ import { ToleranceStrip } from '../../../components/strip/tolerance-strip.tsx';
 import { Button } from '../../../components/ui/button.tsx';
 import { captureDeed } from '../offline/deeds.ts';
 import { clockOffsetMs } from '../offline/phone-queue.ts';
-import { capturesOf, countingOf, waitingSince } from '../offline/run-state.ts';
+import { capturesOf, countingOf, stepBegan, waitingSince } from '../offline/run-state.ts';
 import { plannedGuardBand } from '../words.ts';
 import { useBench } from './bench-context.ts';
 import { BenchFoot } from './bench-foot.tsx';
@@ -39,7 +39,9 @@ export function CaptureScreen({ step }: { step: CaptureStep }) {
   /** The reading captured last: each counts once. */
   const [takenAt, setTakenAt] = useState<string | null>(null);
   const limits = settleLimits(step, criteria);
-  const settling = judgeSettling(stream.points, limits);
+  // Steady readings of the last bottle say nothing of this one: the window begins with the step.
+  const sinceMs = stepBegan(view) - stream.deviceLagMs;
+  const settling = judgeSettling(stream.points, limits, sinceMs);
   const leftS = timeoutLeftS(waitingSince(view), stream.nowMs, criteria.stabilityTimeoutS);
   const isStable = stream.reading !== null && settling.state === 'stable';
   const signal = useStableSignal(isStable);
@@ -131,7 +133,7 @@ export function CaptureScreen({ step }: { step: CaptureStep }) {
                   (limits.stabilityRangePercent / 100) *
                   Math.max(Math.abs(settling.conductivity?.mean ?? 0), limits.leastBaseUsCm ?? 0)
                 }
-                sinceMs={0}
+                sinceMs={sinceMs}
               />
               <SettlePanel
                 settling={settling}

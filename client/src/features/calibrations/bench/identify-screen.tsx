@@ -1,4 +1,4 @@
-import { useRef, useState } from 'react';
+import { useState } from 'react';
 import { formatNumber } from '../../../../../shared/format/numbers.ts';
 import { Button } from '../../../components/ui/button.tsx';
 import { Field } from '../../../components/ui/field.tsx';
@@ -82,8 +82,7 @@ function isSameSerial(read: string, expected: string): boolean {
 
 /** The camera’s picture while it looks for a code. */
 export function ScanPicture({ onCode, onClose }: { onCode: (code: string) => void; onClose: () => void }) {
-  const video = useRef<HTMLVideoElement>(null);
-  const refusal = useScanner(video, onCode);
+  const { video, refusal } = useScanner(onCode);
   return (
     <div>
       <video ref={video} className="scan-picture" muted playsInline aria-label="Camera, looking for a code" />

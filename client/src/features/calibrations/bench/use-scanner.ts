@@ -1,4 +1,3 @@
-import type { RefObject } from 'react';
 import { useEffect, useRef, useState } from 'react';
 
 interface DetectedCode {
@@ -20,8 +19,9 @@ function codeReader(): CodeDetectorClass | null {
 
 export const canScan = (): boolean => codeReader() !== null;
 
-/** Reads codes from the rear camera into a video element until one is found. */
-export function useScanner(video: RefObject<HTMLVideoElement | null>, onCode: (code: string) => void) {
+/** Reads codes from the rear camera, shown in the video element that takes the ref, until one is found. */
+export function useScanner(onCode: (code: string) => void) {
+  const video = useRef<HTMLVideoElement>(null);
   const [refusal, setRefusal] = useState<string | null>(null);
   const told = useRef(onCode);
   useEffect(() => {
@@ -44,9 +44,10 @@ export function useScanner(video: RefObject<HTMLVideoElement | null>, onCode: (c
     };
     const begin = async () => {
       stream = await navigator.mediaDevices.getUserMedia({ video: { facingMode: 'environment' } });
-      if (isOver || !video.current) return stream.getTracks().forEach((track) => track.stop());
-      video.current.srcObject = stream;
-      await video.current.play();
+      const picture = video.current;
+      if (isOver || !picture) return stream.getTracks().forEach((track) => track.stop());
+      picture.srcObject = stream;
+      await picture.play();
       await look();
     };
     begin().catch(() => setRefusal('The camera cannot be used here. Type the code instead.'));
@@ -55,8 +56,8 @@ export function useScanner(video: RefObject<HTMLVideoElement | null>, onCode: (c
       if (timer !== null) clearTimeout(timer);
       stream?.getTracks().forEach((track) => track.stop());
     };
-  }, [video]);
-  return refusal;
+  }, []);
+  return { video, refusal };
 }
 
 /** A label may carry an address of ours (`https://…/probes/12`) or the bare code. */

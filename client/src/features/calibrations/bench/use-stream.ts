@@ -15,6 +15,8 @@ export interface Stream {
   /** Why there is no reading, in words. */
   silence: string | null;
   nowMs: number;
+  /** This phone's clock less the device's, as far as the way of a reading allows to tell, ms. */
+  deviceLagMs: number;
 }
 
 /** Most devices send within this time. */
@@ -36,7 +38,7 @@ export function useStream(probeId: number): Stream {
   if (!last) {
     const isWaiting = silentMs < PATIENCE_MS;
     const silence = isWaiting ? 'waiting for the probe' : 'no reading comes';
-    return { points, reading: null, isWaiting, silence, nowMs };
+    return { points, reading: null, isWaiting, silence, nowMs, deviceLagMs: 0 };
   }
   const isSilent = silentMs > silenceLimitMs(points);
   return {
@@ -45,5 +47,6 @@ export function useStream(probeId: number): Stream {
     isWaiting: false,
     silence: isSilent ? `no reading for ${formatDuration(silentMs / 1000)}` : null,
     nowMs,
+    deviceLagMs: heard.atMs - Date.parse(last.at),
   };
 }

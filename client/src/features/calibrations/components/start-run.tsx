@@ -217,6 +217,14 @@ function StartForm({ probe, userId, lots, bottles, thermometers, lastLotCode }: 
           onChange={(event) => setDraft({ ...draft, thermometerId: Number(event.target.value) || null })}
         />
       </Field>
+      {shown.length < fitting.length || showsAll ? (
+        <Checkbox
+          label="Show lots that are not usable as well"
+          hint="Another person must answer for them here and now."
+          isChecked={showsAll}
+          onChange={setShowsAll}
+        />
+      ) : null}
       {isUnusable ? <OverrideFields draft={override} onChange={setOverride} issueFor={issueFor} /> : null}
       <FormRefusal>{refusal}</FormRefusal>
       <Button kind="primary" type="submit" className="start-begin" isPending={isPending}>

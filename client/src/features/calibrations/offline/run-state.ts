@@ -148,12 +148,19 @@ export function countingOf(view: RunView, step: RunStep): RunCapture[] {
   );
 }
 
-/** Since when the current step waits for its next reading: the end of the step before, or the last capture. */
-export function waitingSince(view: RunView): number {
-  const moments = [
+/** When the current step began: the end of the one before. */
+export function stepBegan(view: RunView): number {
+  return latest([
     view.calibration.startedAt,
     ...view.steps.map((one) => (one.state === 'done' ? one.capturedAt : null)),
-    ...view.captures.filter((one) => one.step === view.currentStep).map((one) => one.capturedAt),
-  ];
-  return Math.max(...moments.map((moment) => (moment === null ? 0 : Date.parse(moment))));
+  ]);
 }
+
+/** Since when the current step waits for its next reading: its beginning, or its last capture. */
+export function waitingSince(view: RunView): number {
+  const captures = view.captures.filter((one) => one.step === view.currentStep);
+  return Math.max(stepBegan(view), latest(captures.map((one) => one.capturedAt)));
+}
+
+const latest = (moments: readonly (string | null)[]): number =>
+  moments.reduce((last, moment) => Math.max(last, moment === null ? 0 : Date.parse(moment)), 0);

@@ -32,7 +32,7 @@ export function BudgetBars({ verdict }: { verdict: Verdict }) {
           ))}
           <tr>
             <td className="is-words" colSpan={2}>
-              <b>Expanded, k = {formatNumber(verdict.coverageFactor, { significantDigits: 3 })}</b>
+              <b>Expanded, k = {formatNumber(Math.round(verdict.coverageFactor * 100) / 100)}</b>
             </td>
             <td className="is-number">
               <b>{formatNumber(U, { decimals: decimalsOf(U), unit: '%' })}</b>
