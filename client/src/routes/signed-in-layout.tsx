@@ -8,10 +8,10 @@ import { Switcher } from '../components/ui/switcher.tsx';
 import { ThemeToggle } from '../components/ui/theme-toggle.tsx';
 import { usePhoneQueue } from '../features/calibrations/offline/phone-queue.ts';
 import { GlobalSearch } from '../features/search/components/global-search.tsx';
+import { useSignOut } from '../features/sessions/api.ts';
 import { RequireSession } from '../features/sessions/components/require-session.tsx';
 import { roleWords } from '../features/sessions/model.ts';
 import { useSession } from '../features/sessions/session-context.ts';
-import { useLeave } from '../features/sessions/use-leave.ts';
 import { sitesList } from '../features/sites/api.ts';
 import { useSiteInView } from '../features/sites/site-in-view.ts';
 import { paths } from '../paths.ts';
@@ -33,7 +33,7 @@ function Shell() {
   const { pathname } = useLocation();
   const siteId = useSiteInView();
   const sites = useQuery(sitesList()).data?.items ?? [];
-  const leave = useLeave();
+  const signOut = useSignOut();
   return (
     <AppShell
       home={paths.live.to()}
@@ -45,7 +45,7 @@ function Shell() {
         role: roleWords(session, siteId),
         items: [
           { label: 'Your account', hint: session.user.email, to: paths.account.to() },
-          { label: 'Sign out', onSelect: leave },
+          { label: 'Sign out', onSelect: () => signOut.mutate({ isEverywhere: false }) },
         ],
       }}
       personFoot={<ThemeToggle />}

@@ -7,6 +7,7 @@ import type {
   SetPassword,
 } from '../../../../shared/contracts/users.ts';
 import { http, HttpProblem } from '../../lib/http.ts';
+import { paths } from '../../paths.ts';
 
 /** Who is signed in; null when nobody is. */
 export const currentSession = () =>
@@ -43,14 +44,11 @@ export function useSignIn() {
 }
 
 export function useSignOut() {
-  const queryClient = useQueryClient();
   return useMutation({
     mutationFn: ({ isEverywhere }: { isEverywhere: boolean }) =>
       http.delete<undefined>(isEverywhere ? '/api/sessions' : '/api/sessions/current'),
-    onSuccess: () => {
-      queryClient.setQueryData(currentSession().queryKey, null);
-      forgetAnswers(queryClient);
-    },
+    // A whole new page: nothing that this person has seen stays in memory for the next one.
+    onSuccess: () => window.location.assign(paths.signIn.to()),
   });
 }
 

@@ -1,5 +1,4 @@
 import { useState } from 'react';
-import { useNavigate } from 'react-router-dom';
 import type { Session } from '../../../../../shared/contracts/sessions.ts';
 import { capitalise } from '../../../../../shared/format/labels.ts';
 import { Button } from '../../../components/ui/button.tsx';
@@ -8,7 +7,6 @@ import { DefinitionList } from '../../../components/ui/definition-list.tsx';
 import { PageHead, SectionTitle } from '../../../components/ui/page-head.tsx';
 import { ThemeToggle } from '../../../components/ui/theme-toggle.tsx';
 import { Age } from '../../../components/ui/time.tsx';
-import { paths } from '../../../paths.ts';
 import { useSignOut } from '../api.ts';
 import { grantWords } from '../model.ts';
 import { ChangePasswordForm } from './change-password-form.tsx';
@@ -63,7 +61,6 @@ export function Account({ session }: { session: Session }) {
 function SignOutEverywhere() {
   const [isOpen, setIsOpen] = useState(false);
   const signOut = useSignOut();
-  const navigate = useNavigate();
   return (
     <div className="mt-6">
       <Button onClick={() => setIsOpen(true)}>Sign out everywhere…</Button>
@@ -73,10 +70,7 @@ function SignOutEverywhere() {
         title="Sign out everywhere?"
         sentence="Every browser and phone where you are signed in is signed out at once, this one included."
         confirmLabel="Sign out everywhere"
-        onConfirm={async () => {
-          await signOut.mutateAsync({ isEverywhere: true });
-          await navigate(paths.signIn.to());
-        }}
+        onConfirm={() => signOut.mutateAsync({ isEverywhere: true })}
       />
     </div>
   );
