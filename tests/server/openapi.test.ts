@@ -94,16 +94,20 @@ describe('the description at /api/openapi.json', () => {
       const inQuery = operation.parameters.filter((one) => one.in === 'query');
       expect(inQuery.length > 0).toBe(spec.query !== undefined);
 
-      expect(operation.requestBody !== undefined).toBe(spec.body !== undefined);
+      expect(operation.requestBody !== undefined).toBe(spec.body !== undefined || spec.bytes !== undefined);
+      if (spec.bytes)
+        expect(Object.keys(operation.requestBody?.content ?? {})).toEqual([...spec.bytes.mediaTypes]);
       if (spec.body) {
         const schema = operation.requestBody?.content?.['application/json']?.schema ?? {};
         expect(Object.keys(schema)).toEqual(
           expect.arrayContaining([expect.stringMatching(/^(type|oneOf|anyOf|allOf)$/)]),
         );
       }
-      const status = spec.answer ? String(spec.status ?? 200) : '204';
+      const status = spec.answer || spec.sends ? String(spec.status ?? 200) : '204';
       expect(Object.keys(operation.responses).toSorted()).toEqual([status, 'default'].toSorted());
       if (spec.answer) expect(answerSchema(operation, status)).not.toEqual({});
+      if (spec.sends)
+        expect(Object.keys(operation.responses[status]?.content ?? {})).toEqual([...spec.sends]);
       expect(operation.responses['default']?.content?.['application/problem+json']?.schema).toEqual({
         $ref: '#/components/schemas/Problem',
       });
