@@ -1,4 +1,5 @@
 import { Check } from '../../server/db/models/index.ts';
+import { asContract } from '../../server/features/calibrations/budget.ts';
 import { OutOfDomainError } from '../../shared/science/errors.ts';
 import { evaluateCheck } from '../../shared/science/check-evaluation.ts';
 import type { CertifiedLot } from '../../shared/science/certified-lots.ts';
@@ -92,7 +93,7 @@ function rowOf(loading: Loading, timeline: ProbeTimeline, comparison: Comparison
       outcome,
       probabilityOutside,
       acceptanceLimitPercent,
-      budget,
+      budget: budget.map(asContract),
       tolerancePercent: point.tolerancePercent,
       decisionRule: point.decisionRule,
     };

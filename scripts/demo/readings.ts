@@ -81,7 +81,7 @@ const rollUp = `
   INSERT INTO reading_rollups (probe_id, bucket_at, reading_count, conductivity_min_us_cm, conductivity_max_us_cm, conductivity_mean_us_cm, temperature_mean_c)
   SELECT probe_id, date_bin('10 minutes', at, timestamptz '2000-01-01T00:00:00Z'), count(*),
          min(conductivity_us_cm), max(conductivity_us_cm), avg(conductivity_us_cm), avg(temperature_c)
-  FROM readings WHERE context = 'process' GROUP BY 1, 2`;
+  FROM readings WHERE context IN ('process', 'unknown') GROUP BY 1, 2`;
 
 /** The roll-up job goes on from here instead of starting over. */
 async function rememberRollups(client: pg.Client, endAt: number): Promise<void> {
