@@ -5,6 +5,7 @@ import { createServer as createTlsServer } from 'node:tls';
 import { Aedes, type Client } from 'aedes';
 import { maxMessageBytes } from '../../shared/contracts/mqtt.ts';
 import { devicesConnected } from '../http/metrics.ts';
+import type { Logger } from '../lib/logger.ts';
 import type { Parts } from '../parts.ts';
 import { brokerHooks } from './broker-hooks.ts';
 import type { CommandLine } from './commands.ts';
@@ -55,20 +56,7 @@ export async function openBroker(options: {
     connectTimeout: connectTimeoutMs,
     drainTimeout: drainTimeoutMs,
   });
-  aedes.on('client', (client) => {
-    connected.set(client.id, client);
-    devicesConnected.set(connected.size);
-  });
-  aedes.on('clientDisconnect', (client) => {
-    if (connected.get(client.id) === client) connected.delete(client.id);
-    devicesConnected.set(connected.size);
-  });
-  aedes.on('clientError', (client, error) =>
-    log.debug({ device: client.id, err: error }, 'device connection ended'),
-  );
-  aedes.on('connectionError', (_client, error) =>
-    log.debug({ err: error }, 'connection ended before sign-in'),
-  );
+  follow(aedes, connected, log);
   directory.onCredentialsChanged((name) => {
     log.info({ device: name }, 'credentials changed: connection closed');
     connected.get(name)?.close();
@@ -105,6 +93,24 @@ export async function openBroker(options: {
     },
     end: () => new Promise((resolve) => aedes.close(() => resolve())),
   };
+}
+
+/** Keeps `connected` true to the broker, and its complaints in the log. */
+function follow(aedes: Aedes, connected: Map<string, Client>, log: Logger): void {
+  aedes.on('client', (client) => {
+    connected.set(client.id, client);
+    devicesConnected.set(connected.size);
+  });
+  aedes.on('clientDisconnect', (client) => {
+    if (connected.get(client.id) === client) connected.delete(client.id);
+    devicesConnected.set(connected.size);
+  });
+  aedes.on('clientError', (client, error) =>
+    log.debug({ device: client.id, err: error }, 'device connection ended'),
+  );
+  aedes.on('connectionError', (_client, error) =>
+    log.debug({ err: error }, 'connection ended before sign-in'),
+  );
 }
 
 function listen(server: Server, port: number, host: string): Promise<Server> {

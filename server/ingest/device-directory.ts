@@ -5,7 +5,7 @@
 import type { Pool } from 'pg';
 import { settingDefaults, settingShapes, type SettingValue } from '../../shared/contracts/settings.ts';
 import type { Logger } from '../lib/logger.ts';
-import { listenForChanges } from './directory-listener.ts';
+import { listenForChanges, type DirectoryListener } from './directory-listener.ts';
 import {
   selectDevice,
   selectDevices,
@@ -26,110 +26,136 @@ interface Surroundings {
   uncertainty: SettingValue<'check-uncertainty'>;
 }
 
-export interface DeviceDirectory {
-  /** The device as last heard of; undefined when it must be looked up. */
-  cached: (name: string) => Device | undefined;
-  find: (name: string) => Promise<Device | null>;
-  /** Devices on record as online. */
-  onlineDevices: () => Device[];
-  /** Reads one device again; call it after its credentials changed if the change must count in this very call. */
-  refreshDevice: (name: string) => Promise<void>;
-  /** Called with a device whose credentials no longer let it in, or have changed. */
-  onCredentialsChanged: (listener: (name: string) => void) => void;
-  /** Reads probes, placements and settings again if any was announced as changed. */
-  ensureFresh: () => Promise<void>;
-  probe: (probeId: number) => ProbeRow | undefined;
-  /** Where the probe stands at a moment near now. */
-  currentPoint: (probeId: number, atMs: number) => PointRow | null;
-  uncertainty: () => SettingValue<'check-uncertainty'>;
-  stop: () => Promise<void>;
-}
-
 /** Names asked for in vain are remembered this long, so that a flood of them does not reach the database. */
 const unknownForMs = 5000;
 const maxUnknown = 10_000;
+const surroundingTables = new Set(['probes', 'assignments', 'points', 'settings']);
 
-export async function openDeviceDirectory(options: {
+interface DirectoryOptions {
   pool: Pool;
   url: string;
   log: Logger;
   nowMs: () => number;
-}): Promise<DeviceDirectory> {
-  const { pool, url, log, nowMs } = options;
-  const devices = new Map<string, Device>();
-  const unknown = new Map<string, number>();
-  const listeners: ((name: string) => void)[] = [];
-  let surroundings: Surroundings | null = null;
-  let isStale = false;
+}
 
-  const put = (name: string, next: Device | null): void => {
-    const before = devices.get(name);
-    if (next) devices.set(name, next);
-    else devices.delete(name);
+export class DeviceDirectory {
+  private readonly options: DirectoryOptions;
+  private readonly devices = new Map<string, Device>();
+  private readonly unknown = new Map<string, number>();
+  private readonly listeners: ((name: string) => void)[] = [];
+  private surroundings: Surroundings;
+  private isStale = false;
+  private listener: DirectoryListener | null = null;
+
+  private constructor(options: DirectoryOptions, surroundings: Surroundings) {
+    this.options = options;
+    this.surroundings = surroundings;
+  }
+
+  static async open(options: DirectoryOptions): Promise<DeviceDirectory> {
+    const directory = new DeviceDirectory(options, await readSurroundings(options.pool));
+    const complain = (error: unknown): void =>
+      options.log.warn({ err: error }, 'the device directory could not be read again');
+    const { url, log } = options;
+    directory.listener = await listenForChanges({
+      url,
+      log,
+      onChange: (what) => {
+        const [table, name] = what.split('/');
+        if (table === 'devices' && name) directory.refreshDevice(name).catch(complain);
+        else if (surroundingTables.has(what)) directory.isStale = true;
+      },
+      onGap: () => {
+        directory.isStale = true;
+        directory.reloadDevices().catch(complain);
+      },
+    });
+    // What changed between the first look and the listening would otherwise stay unknown.
+    directory.isStale = true;
+    await directory.reloadDevices();
+    await directory.ensureFresh();
+    return directory;
+  }
+
+  /** The device as last heard of; undefined when it must be looked up. */
+  cached(name: string): Device | undefined {
+    return this.devices.get(name);
+  }
+
+  async find(name: string): Promise<Device | null> {
+    const known = this.devices.get(name);
+    if (known) return known;
+    const now = this.options.nowMs();
+    if ((this.unknown.get(name) ?? 0) > now) return null;
+    const row = await selectDevice(this.options.pool, name);
+    if (row) this.devices.set(name, row);
+    else {
+      if (this.unknown.size >= maxUnknown) this.unknown.clear();
+      this.unknown.set(name, now + unknownForMs);
+    }
+    return row;
+  }
+
+  /** Devices on record as online. */
+  onlineDevices(): Device[] {
+    return [...this.devices.values()].filter((device) => device.isOnline && !device.isRevoked);
+  }
+
+  /** Reads one device again; call it when a change of credentials must count in this very call. */
+  async refreshDevice(name: string): Promise<void> {
+    this.unknown.delete(name);
+    this.put(name, await selectDevice(this.options.pool, name));
+  }
+
+  /** Called with a device whose credentials no longer let it in, or have changed. */
+  onCredentialsChanged(listener: (name: string) => void): void {
+    this.listeners.push(listener);
+  }
+
+  /** Reads probes, placements and settings again if any was announced as changed. */
+  async ensureFresh(): Promise<void> {
+    if (!this.isStale) return;
+    // Lowered first: a change announced while reading must raise it again.
+    this.isStale = false;
+    try {
+      this.surroundings = await readSurroundings(this.options.pool);
+    } catch (error) {
+      this.isStale = true;
+      throw error;
+    }
+  }
+
+  probe(probeId: number): ProbeRow | undefined {
+    return this.surroundings.probes.get(probeId);
+  }
+
+  /** Where the probe stands at a moment near now. */
+  currentPoint(probeId: number, atMs: number): PointRow | null {
+    return placementAmong(this.surroundings.placements.get(probeId), atMs);
+  }
+
+  uncertainty(): SettingValue<'check-uncertainty'> {
+    return this.surroundings.uncertainty;
+  }
+
+  async stop(): Promise<void> {
+    await this.listener?.stop();
+  }
+
+  private async reloadDevices(): Promise<void> {
+    const rows = new Map((await selectDevices(this.options.pool)).map((row) => [row.name, row]));
+    this.unknown.clear();
+    for (const name of new Set([...this.devices.keys(), ...rows.keys()]))
+      this.put(name, rows.get(name) ?? null);
+  }
+
+  private put(name: string, next: Device | null): void {
+    const before = this.devices.get(name);
+    if (next) this.devices.set(name, next);
+    else this.devices.delete(name);
     const isOut = !next || next.isRevoked || (before && before.secretHash !== next.secretHash);
-    if (before && isOut) for (const listener of listeners) listener(name);
-  };
-  const refreshDevice = async (name: string): Promise<void> => {
-    unknown.delete(name);
-    put(name, await selectDevice(pool, name));
-  };
-  const reloadDevices = async (): Promise<void> => {
-    const rows = new Map((await selectDevices(pool)).map((row) => [row.name, row]));
-    unknown.clear();
-    for (const name of new Set([...devices.keys(), ...rows.keys()])) put(name, rows.get(name) ?? null);
-  };
-  const complain = (error: unknown): void =>
-    log.warn({ err: error }, 'the device directory could not be read again');
-
-  const listener = await listenForChanges({
-    url,
-    log,
-    onChange: (what) => {
-      const [table, name] = what.split('/');
-      if (table === 'devices' && name) refreshDevice(name).catch(complain);
-      else isStale = true;
-    },
-    onGap: () => {
-      isStale = true;
-      reloadDevices().catch(complain);
-    },
-  });
-  await reloadDevices();
-  surroundings = await readSurroundings(pool);
-
-  return {
-    cached: (name) => devices.get(name),
-    find: async (name) => {
-      const known = devices.get(name);
-      if (known) return known;
-      if ((unknown.get(name) ?? 0) > nowMs()) return null;
-      const row = await selectDevice(pool, name);
-      if (row) devices.set(name, row);
-      else {
-        if (unknown.size >= maxUnknown) unknown.clear();
-        unknown.set(name, nowMs() + unknownForMs);
-      }
-      return row;
-    },
-    onlineDevices: () => [...devices.values()].filter((device) => device.isOnline && !device.isRevoked),
-    refreshDevice,
-    onCredentialsChanged: (heard) => void listeners.push(heard),
-    ensureFresh: async () => {
-      if (!isStale) return;
-      // Lowered first: a change announced while reading must raise it again.
-      isStale = false;
-      try {
-        surroundings = await readSurroundings(pool);
-      } catch (error) {
-        isStale = true;
-        throw error;
-      }
-    },
-    probe: (probeId) => surroundings?.probes.get(probeId),
-    currentPoint: (probeId, atMs) => placementAmong(surroundings?.placements.get(probeId), atMs),
-    uncertainty: () => surroundings?.uncertainty ?? settingDefaults['check-uncertainty'],
-    stop: () => listener.stop(),
-  };
+    if (before && isOut) for (const listener of this.listeners) listener(name);
+  }
 }
 
 function placementAmong(placements: PlacementRow[] | undefined, atMs: number): PlacementRow | null {

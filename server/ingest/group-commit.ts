@@ -30,18 +30,6 @@ export class NotTakenError extends Error {
   override readonly name = 'NotTakenError';
 }
 
-export interface GroupCommit<T> {
-  /** Resolves when the item is durable; rejects with NotTakenError when it was not taken. */
-  add: (item: T) => Promise<void>;
-  /** True while the database does not take what is offered. */
-  isHolding: () => boolean;
-  /** True when so much waits that new senders should come later. */
-  isCrowded: () => boolean;
-  waiting: () => { items: number; bytes: number };
-  /** Commits what waits, then takes nothing more. While the database is down, gives up what waits. */
-  stop: () => Promise<void>;
-}
-
 interface Waiting<T> {
   item: T;
   bytes: number;
@@ -55,116 +43,139 @@ const defaultWaitingBytes = 64 * 1024 * 1024;
 const firstRetryMs = 100;
 const lastRetryMs = 5000;
 
-export function createGroupCommit<T>(options: GroupCommitOptions<T>): GroupCommit<T> {
-  const { maxGroupWeight = defaultGroupWeight, maxWaitingBytes = defaultWaitingBytes } = options;
-  let queue: Waiting<T>[] = [];
-  let bytes = 0;
-  let lane: Promise<void> | null = null;
-  let isHolding = false;
-  let isStopping = false;
-  let endPause: (() => void) | null = null;
+export class GroupCommit<T> {
+  private readonly options: GroupCommitOptions<T>;
+  private readonly maxWeight: number;
+  private readonly maxBytes: number;
+  private queue: Waiting<T>[] = [];
+  private bytes = 0;
+  private lane: Promise<void> | null = null;
+  private isTroubled = false;
+  private isStopping = false;
+  private endPause: (() => void) | null = null;
 
-  const takeGroup = (): Waiting<T>[] => {
-    let weight = 0;
-    let count = 0;
-    for (const { item } of queue) {
-      weight += options.weigh(item);
-      if (count > 0 && weight > maxGroupWeight) break;
-      count += 1;
-    }
-    const group = queue.slice(0, count);
-    queue = queue.slice(count);
-    return group;
-  };
+  constructor(options: GroupCommitOptions<T>) {
+    this.options = options;
+    this.maxWeight = options.maxGroupWeight ?? defaultGroupWeight;
+    this.maxBytes = options.maxWaitingBytes ?? defaultWaitingBytes;
+  }
 
-  const pause = (ms: number): Promise<void> =>
-    new Promise((resolve) => {
-      const timer = setTimeout(resolve, ms);
-      endPause = () => {
-        clearTimeout(timer);
-        resolve();
-      };
+  /** Resolves when the item is durable; rejects with NotTakenError when it was not taken. */
+  add(item: T): Promise<void> {
+    return new Promise((resolve, reject) => {
+      const bytes = this.options.bytesOf(item);
+      if (this.isStopping) return reject(new NotTakenError('The server is stopping.'));
+      if (this.bytes + bytes > this.maxBytes) {
+        return reject(new NotTakenError('Too much is waiting for the database.'));
+      }
+      this.bytes += bytes;
+      this.queue.push({ item, bytes, resolve, reject });
+      this.startLane();
     });
+  }
 
-  /** Repeats until the database has taken the items or refused what they hold. */
-  const commitHolding = async (items: readonly T[]): Promise<void> => {
-    for (let attempt = 0; ; attempt += 1) {
+  /** True while the database does not take what is offered. */
+  isHolding(): boolean {
+    return this.isTroubled;
+  }
+
+  /** True when so much waits that new senders should come later: half, so that those who are in have room. */
+  isCrowded(): boolean {
+    return this.bytes > this.maxBytes / 2;
+  }
+
+  waiting(): { items: number; bytes: number } {
+    return { items: this.queue.length, bytes: this.bytes };
+  }
+
+  /** Commits what waits, then takes nothing more. While the database is down, gives up what waits. */
+  async stop(): Promise<void> {
+    this.isStopping = true;
+    this.endPause?.();
+    while (this.lane) await this.lane;
+  }
+
+  // Once per turn of the event loop: everything that one round of socket reads brings shares the first group.
+  private startLane(): void {
+    this.lane ??= new Promise((resolve) => setImmediate(() => void this.run().then(resolve)));
+  }
+
+  private async run(): Promise<void> {
+    while (this.queue.length > 0) {
+      const group = this.takeGroup();
+      let failure: Error | null = null;
       try {
-        await options.commit(items);
-        isHolding = false;
-        return;
+        await this.commitAll(group.map(({ item }) => item));
       } catch (error) {
-        if (options.isRefusal(error)) throw error;
-        if (isStopping) throw new NotTakenError('The database does not answer and the server is stopping.');
-        isHolding = true;
-        options.onHold(error, attempt);
-        await pause(Math.min(lastRetryMs, firstRetryMs * 2 ** attempt));
+        failure = error as Error;
+      }
+      for (const waiting of group) {
+        this.bytes -= waiting.bytes;
+        if (failure) waiting.reject(failure);
+        else waiting.resolve();
       }
     }
-  };
+    this.lane = null;
+  }
+
+  private takeGroup(): Waiting<T>[] {
+    let weight = 0;
+    let count = 0;
+    for (const { item } of this.queue) {
+      weight += this.options.weigh(item);
+      if (count > 0 && weight > this.maxWeight) break;
+      count += 1;
+    }
+    const group = this.queue.slice(0, count);
+    this.queue = this.queue.slice(count);
+    return group;
+  }
 
   /** Halves a refused group until the refused item stands alone, so that it stops nobody else. */
-  const commitAll = async (items: readonly T[]): Promise<void> => {
+  private async commitAll(items: readonly T[]): Promise<void> {
     try {
-      await commitHolding(items);
+      await this.commitHolding(items);
     } catch (error) {
       if (error instanceof NotTakenError) throw error;
       const [first] = items;
       if (first === undefined) return;
       if (items.length > 1) {
         const middle = items.length >> 1;
-        await commitAll(items.slice(0, middle));
-        await commitAll(items.slice(middle));
+        await this.commitAll(items.slice(0, middle));
+        await this.commitAll(items.slice(middle));
         return;
       }
-      const aside = options.setAside(first, error);
-      if (aside !== null) await commitAll([aside]);
+      const aside = this.options.setAside(first, error);
+      if (aside !== null) await this.commitAll([aside]);
     }
-  };
+  }
 
-  const run = async (): Promise<void> => {
-    while (queue.length > 0) {
-      const group = takeGroup();
-      let failure: Error | null = null;
+  /** Repeats until the database has taken the items or refused what they hold. */
+  private async commitHolding(items: readonly T[]): Promise<void> {
+    for (let attempt = 0; ; attempt += 1) {
       try {
-        await commitAll(group.map(({ item }) => item));
+        await this.options.commit(items);
+        this.isTroubled = false;
+        return;
       } catch (error) {
-        failure = error as Error;
-      }
-      for (const waiting of group) {
-        bytes -= waiting.bytes;
-        if (failure) waiting.reject(failure);
-        else waiting.resolve();
+        if (this.options.isRefusal(error)) throw error;
+        if (this.isStopping) {
+          throw new NotTakenError('The database does not answer and the server is stopping.');
+        }
+        this.isTroubled = true;
+        this.options.onHold(error, attempt);
+        await this.pause(Math.min(lastRetryMs, firstRetryMs * 2 ** attempt));
       }
     }
-    lane = null;
-  };
+  }
 
-  // Once per turn of the event loop: everything that one round of socket reads brings shares the first group.
-  const startLane = (): void => {
-    lane ??= new Promise((resolve) => setImmediate(() => void run().then(resolve)));
-  };
-
-  return {
-    add: (item) =>
-      new Promise((resolve, reject) => {
-        const size = options.bytesOf(item);
-        if (isStopping) return reject(new NotTakenError('The server is stopping.'));
-        if (bytes + size > maxWaitingBytes) {
-          return reject(new NotTakenError('Too much is waiting for the database.'));
-        }
-        bytes += size;
-        queue.push({ item, bytes: size, resolve, reject });
-        startLane();
-      }),
-    isHolding: () => isHolding,
-    // Half full: room is left for those who are connected already.
-    isCrowded: () => bytes > maxWaitingBytes / 2,
-    waiting: () => ({ items: queue.length, bytes }),
-    stop: async () => {
-      isStopping = true;
-      endPause?.();
-      while (lane) await lane;
-    },
-  };
+  private pause(ms: number): Promise<void> {
+    return new Promise((resolve) => {
+      const timer = setTimeout(resolve, ms);
+      this.endPause = () => {
+        clearTimeout(timer);
+        resolve();
+      };
+    });
+  }
 }

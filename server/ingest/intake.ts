@@ -3,7 +3,7 @@ import { splitByTime, judgeAge } from './time-rules.ts';
 import type { Logger } from '../lib/logger.ts';
 import { isRefusal } from './database-errors.ts';
 import { decode } from './decode.ts';
-import { createGroupCommit } from './group-commit.ts';
+import { GroupCommit } from './group-commit.ts';
 import type { Arrival, Content, Envelope, Refusal } from './message.ts';
 import { messagesWaiting } from './metrics.ts';
 import { setAside } from './quarantine.ts';
@@ -31,7 +31,7 @@ export function createIntake(
   log: Logger,
   limits: { maxGroupWeight?: number; maxWaitingBytes?: number } = {},
 ): Intake {
-  const group = createGroupCommit<Arrival>({
+  const group: GroupCommit<Arrival> = new GroupCommit({
     ...limits,
     commit: async (arrivals) => {
       await store.commit(arrivals);
@@ -57,10 +57,10 @@ export function createIntake(
   return {
     take: (envelope, kind) => group.add(toArrival(envelope, kind)),
     refuse: (envelope, refusal) => group.add({ envelope, content: null, refusals: [refusal] }),
-    isHolding: group.isHolding,
-    isCrowded: group.isCrowded,
-    waiting: group.waiting,
-    stop: group.stop,
+    isHolding: () => group.isHolding(),
+    isCrowded: () => group.isCrowded(),
+    waiting: () => group.waiting(),
+    stop: () => group.stop(),
   };
 }
 

@@ -15,8 +15,9 @@ export function sweepSilent(options: {
   directory: DeviceDirectory;
   intake: Intake;
   isConnected: (name: string) => boolean;
+  everyMs?: number;
 }): { stop: () => void } {
-  const { parts, directory, intake, isConnected } = options;
+  const { parts, directory, intake, isConnected, everyMs = sweepMs } = options;
   const sweep = (): void => {
     for (const { name, bootText } of directory.onlineDevices()) {
       if (bootText === null || isConnected(name)) continue;
@@ -33,6 +34,6 @@ export function sweepSilent(options: {
       });
     }
   };
-  const timer = setInterval(sweep, sweepMs);
+  const timer = setInterval(sweep, everyMs);
   return { stop: () => clearInterval(timer) };
 }

@@ -2,11 +2,11 @@
 import pg from 'pg';
 import type { Parts } from '../parts.ts';
 import { createAnnouncements } from './announcements.ts';
-import { openBroker, type Broker } from './broker.ts';
+import { openBroker } from './broker.ts';
 import { openCommandDesk } from './command-desk.ts';
 import { createCommands, type CommandLine, type Commands } from './commands.ts';
 import { recordDeviceActivity } from './device-activity.ts';
-import { openDeviceDirectory, type DeviceDirectory } from './device-directory.ts';
+import { DeviceDirectory } from './device-directory.ts';
 import { createIntake, type Intake } from './intake.ts';
 import { joinOutsideBroker, type OutsideBroker } from './outside-broker.ts';
 import { sweepSilent } from './silent-sweep.ts';
@@ -28,6 +28,8 @@ export interface IngestLimits {
   maxGroupWeight?: number;
   /** Bytes held unacknowledged at most, over all devices. */
   maxWaitingBytes?: number;
+  /** Between two looks for devices that are gone without a word. */
+  sweepMs?: number;
 }
 
 /** The lane, the once-a-second notes, and look-ups at sign-in. */
@@ -45,7 +47,7 @@ export async function startIngest(parts: Parts, limits: IngestLimits = {}): Prom
   // An idle connection that the server closes would otherwise end the process.
   pool.on('error', (error) => log.warn({ err: error }, 'a database connection of ingest ended'));
 
-  const directory = await openDeviceDirectory({ pool, url: config.databaseUrl, log, nowMs });
+  const directory = await DeviceDirectory.open({ pool, url: config.databaseUrl, log, nowMs });
   const activity = recordDeviceActivity(pool, log);
   const announcements = createAnnouncements(parts.broadcast);
   const line = createLine();
@@ -58,7 +60,7 @@ export async function startIngest(parts: Parts, limits: IngestLimits = {}): Prom
   const takeovers = watchTakeovers({ pool, announcements, log, nowMs });
   const front = config.outsideBrokerUrl
     ? await outsideFront(parts, config.outsideBrokerUrl, intake)
-    : await embeddedFront(parts, directory, intake, takeovers);
+    : await embeddedFront({ parts, directory, intake, takeovers }, limits.sweepMs);
   line.connect(front.line);
   const desk = await openCommandDesk(parts, commands);
   parts.health.push({
@@ -73,7 +75,7 @@ export async function startIngest(parts: Parts, limits: IngestLimits = {}): Prom
   return {
     commands,
     brokerUrl: front.url,
-    refreshDevice: directory.refreshDevice,
+    refreshDevice: (name) => directory.refreshDevice(name),
     waiting: intake.waiting,
     stop: async () => {
       await front.close();
@@ -113,13 +115,11 @@ interface Front {
 }
 
 async function embeddedFront(
-  parts: Parts,
-  directory: DeviceDirectory,
-  intake: Intake,
-  takeovers: ReturnType<typeof watchTakeovers>,
+  needs: Parameters<typeof openBroker>[0],
+  everyMs: number | undefined,
 ): Promise<Front> {
-  const broker: Broker = await openBroker({ parts, directory, intake, takeovers });
-  const sweep = sweepSilent({ parts, directory, intake, isConnected: broker.isConnected });
+  const broker = await openBroker(needs);
+  const sweep = sweepSilent({ ...needs, isConnected: broker.isConnected, everyMs });
   return {
     url: broker.url,
     line: broker.line,

@@ -92,6 +92,24 @@ describe('birth and state', () => {
   });
 });
 
+it('a device whose will went down with the broker is found out', async () => {
+  const [gone, there] = await Promise.all([plant.station(), plant.station()]);
+  for (const station of [gone, there]) {
+    await publish(await plant.connect(station), station.name, 'state', aState(true, 'start'), true);
+  }
+  await plant.restartIngest({ sweepMs: 100 }, async () => {
+    // As a crash leaves it: online on record, and nobody left to publish a will.
+    expect(await deviceRow(gone)).toMatchObject({ is_online: true });
+  });
+  const client = await plant.connect(there);
+  await eventually(async () =>
+    expect(await deviceRow(gone)).toMatchObject({ is_online: false, online_why: 'lost' }),
+  );
+  await publish(client, there.name, 'state', aState(true, 'start'), true);
+  expect(await deviceRow(there)).toMatchObject({ is_online: true });
+  await plant.restartIngest();
+});
+
 describe('the order of boots decides, never arrival', () => {
   it.each([
     ['one after the other', false],
