@@ -24,7 +24,10 @@ function aButton(isEnabled = true) {
   button.setPointerCapture = () => undefined;
   return { captured, button, view };
 }
-const pass = (ms: number) => act(() => vi.advanceTimersByTime(ms));
+const pass = (ms: number): void =>
+  act(() => {
+    vi.advanceTimersByTime(ms);
+  });
 
 describe('press and hold', () => {
   it('captures after 600 ms, and says meanwhile what it does', () => {

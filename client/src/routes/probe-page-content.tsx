@@ -41,9 +41,7 @@ export function ProbePageContent({ probe }: { probe: Probe }) {
         actions={
           <>
             {probe.placement && mayCalibrateAt(session, siteId) ? (
-              <ButtonLink kind="primary" to={paths.startCalibration.to({ probeId: id })}>
-                Calibrate
-              </ButtonLink>
+              <ButtonLink to={paths.startCalibration.to({ probeId: id })}>Calibrate</ButtonLink>
             ) : null}
             <ProbeActions
               probe={probe}

@@ -125,6 +125,8 @@ export function keepAnswer(queryClient: QueryClient, userId: number, calibration
 export function useStartCalibration(userId: number) {
   const queryClient = useQueryClient();
   return useMutation({
+    // Without network it must say so at once, not wait unseen.
+    networkMode: 'always',
     mutationFn: (body: StartCalibration) => http.post<Calibration>('/api/calibrations', body),
     onSuccess: (calibration) => {
       keepAnswer(queryClient, userId, calibration);
@@ -145,6 +147,7 @@ interface Deeds {
 export function useCalibrationDeed<Verb extends keyof Deeds>(id: number, verb: Verb, userId: number) {
   const queryClient = useQueryClient();
   return useMutation({
+    networkMode: 'always',
     mutationFn: (body: Deeds[Verb]) => http.post<Calibration>(`/api/calibrations/${id}/${verb}`, body),
     onSuccess: (calibration) => {
       keepAnswer(queryClient, userId, calibration);
@@ -161,6 +164,7 @@ export function useCalibrationDeed<Verb extends keyof Deeds>(id: number, verb: V
 export function useRepeatCommand(id: number, userId: number) {
   const queryClient = useQueryClient();
   return useMutation({
+    networkMode: 'always',
     mutationFn: () => http.post<Calibration>(`/api/calibrations/${id}/command`),
     onSuccess: (calibration) => keepAnswer(queryClient, userId, calibration),
   });

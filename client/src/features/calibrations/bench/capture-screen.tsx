@@ -2,6 +2,7 @@ import { useState } from 'react';
 import type { CaptureReading, StepData } from '../../../../../shared/contracts/calibrations.ts';
 import type { CaptureStep } from '../../../../../shared/contracts/vocabulary.ts';
 import { benchUnit } from '../../../../../shared/format/calibration-words.ts';
+import { DISPLAY_UNIT_LABELS } from '../../../../../shared/format/labels.ts';
 import { ToleranceStrip } from '../../../components/strip/tolerance-strip.tsx';
 import { Button } from '../../../components/ui/button.tsx';
 import { captureDeed } from '../offline/deeds.ts';
@@ -50,10 +51,11 @@ export function CaptureScreen({ step }: { step: CaptureStep }) {
   const counting = countingOf(view, step);
   const needed = neededCaptures(step, reference.comparedWith, criteria);
   const isComplete = counting.length >= needed && !wantsMore;
-  const unit = benchUnit([
-    stream.reading?.conductivityUsCm ?? null,
-    ...captures.map((one) => one.conductivityUsCm),
-  ]);
+  const known = [stream.reading?.conductivityUsCm ?? null, ...captures.map((one) => one.conductivityUsCm)];
+  // Without any reading yet, the unit that the display at the point is set to.
+  const unit = known.some((value) => value !== null)
+    ? benchUnit(known)
+    : DISPLAY_UNIT_LABELS[run.displayUnit === 'mS/cm' ? 'mS/cm' : 'uS/cm'];
   const isTyped = stream.reading === null && !stream.isWaiting;
   const reading = isTyped ? typed : (stream.reading ?? NO_VALUES);
   const gate = captureGate();

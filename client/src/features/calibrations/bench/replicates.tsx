@@ -2,7 +2,7 @@ import type { ReactNode } from 'react';
 import { useState } from 'react';
 import { formatTime } from '../../../../../shared/format/dates.ts';
 import type { ConductivityUnit } from '../../../../../shared/format/numbers.ts';
-import { formatNumber } from '../../../../../shared/format/numbers.ts';
+import { formatNumber, NO_VALUE } from '../../../../../shared/format/numbers.ts';
 import { labelOf } from '../../../../../shared/format/labels.ts';
 import {
   benchConductivity,
@@ -30,6 +30,10 @@ export function Replicates({ captures, needed, unit, isOpen = true }: Replicates
   const [excluding, setExcluding] = useState<RunCapture | null>(null);
   const counting = captures.filter((one) => one.excluded === null && one.whereabouts !== 'refused').length;
   const missing = Math.max(0, needed - counting);
+  const last = captures.reduce(
+    (highest, one) => (one.refusal ? highest : Math.max(highest, one.position)),
+    0,
+  );
   return (
     <>
       <table className="replicates">
@@ -59,7 +63,7 @@ export function Replicates({ captures, needed, unit, isOpen = true }: Replicates
           {isOpen
             ? Array.from({ length: missing }, (_, i) => (
                 <tr key={i} className="is-empty">
-                  <th scope="row">{captures.length + i + 1}</th>
+                  <th scope="row">{last + i + 1}</th>
                   <td>{i === 0 ? 'next' : ''}</td>
                   <td />
                   <td />
@@ -95,7 +99,7 @@ function ReplicateRow({ capture, unit, status }: ReplicateRowProps) {
           notes.length > 0 && 'has-note',
         )}
       >
-        <th scope="row">{capture.position}</th>
+        <th scope="row">{refusal ? NO_VALUE : capture.position}</th>
         <td>
           {isVoid ? <s>{value}</s> : value} <u>{unit}</u>
         </td>
