@@ -3,6 +3,7 @@ import type { AnyRoute } from '../http/route.ts';
 import { auditEventRoutes } from './audit-events/routes.ts';
 import { bottleRoutes } from './bottles/routes.ts';
 import { calculationRoutes } from './calculations/routes.ts';
+import { recordRoutes } from './calibrations/record-routes.ts';
 import { calibrationRoutes } from './calibrations/routes.ts';
 import { certificateRoutes } from './certificates/routes.ts';
 import { checkRoutes } from './checks/routes.ts';
@@ -14,6 +15,7 @@ import { noticeRoutes } from './notices/routes.ts';
 import { pointRoutes } from './points/routes.ts';
 import { probeRoutes } from './probes/routes.ts';
 import { procedureRoutes } from './procedures/routes.ts';
+import { promptRoutes } from './prompts/routes.ts';
 import { quarantineRoutes } from './quarantine/routes.ts';
 import { readingRoutes } from './readings/routes.ts';
 import { searchRoutes } from './search/routes.ts';
@@ -36,7 +38,9 @@ export const allRoutes: readonly AnyRoute[] = [
   ...certificateRoutes,
   ...instrumentRoutes,
   ...procedureRoutes,
+  ...recordRoutes,
   ...calibrationRoutes,
+  ...promptRoutes,
   ...readingRoutes,
   ...checkRoutes,
   ...quarantineRoutes,

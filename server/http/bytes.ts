@@ -1,4 +1,6 @@
 /** Bodies and answers that are files. */
+import { Readable } from 'node:stream';
+import { pipeline } from 'node:stream/promises';
 import { raw, type Request, type Response } from 'express';
 import { AppError } from '../errors.ts';
 import type { ByteAnswer, ByteBody } from './route.ts';
@@ -27,10 +29,17 @@ function dispositionOf(fileName: string): string {
 }
 
 /** What people uploaded is never run: fixed type, no sniffing, nothing of it may load or act. */
-export function sendBytes(response: Response, { mediaType, bytes, fileName }: ByteAnswer): void {
+export async function sendBytes(
+  response: Response,
+  { mediaType, bytes, fileName }: ByteAnswer,
+): Promise<void> {
   response.set('content-type', mediaType);
   response.set('x-content-type-options', 'nosniff');
   response.set('content-security-policy', "default-src 'none'; style-src 'unsafe-inline'; sandbox");
   if (fileName !== undefined) response.set('content-disposition', dispositionOf(fileName));
-  response.end(bytes);
+  if (!(bytes instanceof Readable)) return void response.end(bytes);
+  // A reader that goes away closes the stream, and with it the file behind it.
+  await pipeline(bytes, response).catch((error: NodeJS.ErrnoException) => {
+    if (error.code !== 'ERR_STREAM_PREMATURE_CLOSE') throw error;
+  });
 }

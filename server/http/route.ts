@@ -2,6 +2,7 @@
  * A slice's routes are a table: verb, path, access, contract, handler. The same table mounts the
  * handlers and writes /api/openapi.json, so the description cannot fall behind.
  */
+import type { Readable } from 'node:stream';
 import type { Request, Response } from 'express';
 import type { z } from 'zod';
 import type { ErrorCode } from '../../shared/contracts/errors.ts';
@@ -20,7 +21,8 @@ export interface ByteBody {
 /** An answer that is bytes and no JSON; with a file name the browser saves it instead of showing it. */
 export interface ByteAnswer {
   mediaType: string;
-  bytes: Buffer | string;
+  /** A stream for what may be long. */
+  bytes: Buffer | string | Readable;
   fileName?: string;
 }
 

@@ -331,19 +331,4 @@ export const calibrationsQuery = listQuery.extend({
 });
 export type CalibrationsQuery = z.infer<typeof calibrationsQuery>;
 
-/** Work that waits for somebody: due soon, overdue. */
-export const prompt = z.object({
-  id,
-  kind: z.enum(['due-soon', 'overdue']),
-  probeId: id,
-  probeTag: z.string(),
-  pointId: id,
-  pointName: z.string(),
-  siteId: id,
-  siteName: z.string(),
-  dueOn: day,
-  raisedAt: instant,
-  closedAt: instant.nullable(),
-});
-export type Prompt = z.infer<typeof prompt>;
-export const promptsQuery = listQuery.extend({ siteId: idParam.optional(), open: z.enum(['1']).optional() });
+export type { Prompt } from './prompts.ts';

@@ -265,7 +265,6 @@ export const errorCodes = define({
     'conflict',
     'A run is handed over to another technician of the same site.',
   ],
-  'prompts.not-found': ['not-found', 'No such work prompt, or not one you may see.'],
 
   'reference.outside-domain': [
     'invalid',

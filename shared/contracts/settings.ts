@@ -10,6 +10,10 @@ export const settingShapes = {
     /** No reading for longer than this many reading intervals is no signal. */
     silentIntervals: z.number().min(2).max(100),
   }),
+  'due-dates': z.object({
+    /** A calibration is due soon from this many days before its day. */
+    dueSoonDays: z.number().int().min(1).max(120),
+  }),
   'check-uncertainty': z.object({
     temperatureStandardUncertaintyC: z.number().min(0).max(2),
     repeatabilityPercent: z.number().min(0).max(5),
@@ -21,6 +25,8 @@ export type SettingValue<K extends SettingKey> = z.infer<(typeof settingShapes)[
 export const settingDefaults: { [K in SettingKey]: SettingValue<K> } = {
   organisation: { name: 'Saltmark' },
   'check-fitness': { overdueFactor: 1, silentIntervals: 5 },
+  /** Two weeks: time to plan a visit and to have solutions at hand [common practice]. */
+  'due-dates': { dueSoonDays: 14 },
   /** 0.05 K and 0.1 %: common practice for a class A sensor read in a stirred flow cell. */
   'check-uncertainty': { temperatureStandardUncertaintyC: 0.05, repeatabilityPercent: 0.1 },
 };

@@ -10,6 +10,7 @@ import type { Parts } from '../../parts.ts';
 import { recordAuditEvent } from '../audit-events/service.ts';
 import { withdrawCredentials } from '../devices/service.ts';
 import { lockPoint } from '../points/service.ts';
+import { refreshPrompts } from '../prompts/service.ts';
 import { probePolicy } from './policy.ts';
 import type { WholeProbe } from './presenter.ts';
 import { addEvent, lockProbe, readProbe } from './service.ts';
@@ -97,6 +98,7 @@ export async function installProbe(
         pointId: input.pointId,
         detail: { pointCode: point.code, note: input.note },
       });
+      await refreshPrompts(parts, transaction, id);
       await recordAuditEvent(parts, transaction, actor, {
         action: 'probes.installed',
         objectKind: 'probes',
@@ -189,6 +191,7 @@ export async function moveProbe(
         pointId: input.pointId,
         detail: { fromPointId: left.pointId, pointCode: point.code, reason: input.reason, note: input.note },
       });
+      await refreshPrompts(parts, transaction, id);
       await recordAuditEvent(parts, transaction, actor, {
         action: 'probes.moved',
         objectKind: 'probes',
@@ -230,6 +233,7 @@ export async function removeProbe(
         pointId: left.pointId,
         detail: { reason: input.reason },
       });
+      await refreshPrompts(parts, transaction, id);
       await recordAuditEvent(parts, transaction, actor, {
         action: 'probes.removed',
         objectKind: 'probes',
@@ -271,6 +275,7 @@ export async function retireProbe(
       ...(left && { pointId: left.pointId }),
       detail: { reason },
     });
+    await refreshPrompts(parts, transaction, id);
     await recordAuditEvent(parts, transaction, actor, {
       action: 'probes.retired',
       objectKind: 'probes',

@@ -53,6 +53,8 @@ export interface StandingRow {
   readingTemperatureC: number | null;
   readingQuality: ReadingQuality | null;
   readingFlags: ReadingFlag[] | null;
+  /** Set by the newest calibration in effect, `YYYY-MM-DD`. */
+  calibrationDueOn: string | null;
   holdUserId: number | null;
   holdUserName: string | null;
   holdReason: string | null;
@@ -77,14 +79,18 @@ const standingColumns = `
   r.at as "readingAt", r.received_at as "readingReceivedAt", r.context as "readingContext",
   r.conductivity_us_cm as "readingConductivityUsCm", r.temperature_c as "readingTemperatureC",
   r.quality as "readingQuality", r.flags as "readingFlags",
-  h.user_id as "holdUserId", u.name as "holdUserName", h.reason as "holdReason", h.from_at as "holdFromAt",
+  k.due_on::text as "calibrationDueOn", h.user_id as "holdUserId", u.name as "holdUserName", h.reason as "holdReason", h.from_at as "holdFromAt",
   h.until_at as "holdUntilAt"`;
 
 const heard = `
   left join devices d on d.probe_id = p.id and d.revoked_at is null
   left join live_readings r on r.probe_id = p.id
   left join holds h on h.point_id = pt.id and h.ended_at is null and h.until_at > $now
-  left join users u on u.id = h.user_id`;
+  left join users u on u.id = h.user_id
+  left join lateral (
+    select due_on from calibrations where probe_id = p.id and due_on is not null
+    order by started_at desc, id desc limit 1
+  ) k on true`;
 
 /** Every point in use of the sites (null = all), with the probe that stands there, by site, area and code. */
 export function selectStandingPoints(

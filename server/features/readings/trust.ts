@@ -10,7 +10,7 @@ import type {
   TrustLevel,
   TrustReason,
 } from '../../../shared/contracts/vocabulary.ts';
-import { formatDay, formatDuration, formatTime } from '../../../shared/format/dates.ts';
+import { formatDay, formatDuration, formatTime, toDateInput } from '../../../shared/format/dates.ts';
 import { formatConductivity, formatSigned } from '../../../shared/format/numbers.ts';
 
 export interface TrustInput {
@@ -37,6 +37,8 @@ export interface TrustInput {
   } | null;
   hold: { reason: string; untilAt: Date } | null;
   lastCheck: { at: Date; stage: CheckStage; errorPercent: number; outcome: Outcome } | null;
+  /** Set by the newest calibration in effect; null before the first. */
+  calibrationDueOn: string | null;
   fitness: SettingValue<'check-fitness'>;
 }
 
@@ -141,7 +143,8 @@ function judgeCondition({ reading, probe, device }: TrustInput): Trust | null {
 const errorText = (check: NonNullable<TrustInput['lastCheck']>): string =>
   `${STAGE_WORDS[check.stage]} ${formatSigned(check.errorPercent, 1, '%')}`;
 
-function judgeComparison({ lastCheck, point, fitness, now, timeZone }: TrustInput): Trust | null {
+function judgeComparison(input: TrustInput): Trust | null {
+  const { lastCheck } = input;
   if (!lastCheck) return say('use-with-care', 'never-compared', 'never compared with a reference solution');
   const error = errorText(lastCheck);
   switch (lastCheck.outcome) {
@@ -152,19 +155,25 @@ function judgeComparison({ lastCheck, point, fitness, now, timeZone }: TrustInpu
       return say('do-not-use', 'outside-unsure', `${error}, outside, too close to be sure`);
     case 'within-unsure':
       return say('use-with-care', 'within-unsure', `${error}, too close to be sure`);
-    case 'within-clear': {
-      const dueAt = new Date(
-        lastCheck.at.getTime() + point.intervalDays * fitness.overdueFactor * 86_400_000,
-      );
-      if (now <= dueAt) return null;
-      const due = formatDay(dueAt, { timeZone });
-      return say(
-        'use-with-care',
-        'check-overdue',
-        `${error} on ${formatDay(lastCheck.at, { timeZone })}, due since ${due}`,
-      );
-    }
+    case 'within-clear':
+      return judgeDue(input, lastCheck);
   }
+}
+
+/** A calibration states its own due date. Before the first one the point's interval counts from the last comparison. */
+function judgeDue(
+  { calibrationDueOn, point, fitness, now, timeZone }: TrustInput,
+  lastCheck: NonNullable<TrustInput['lastCheck']>,
+): Trust | null {
+  const overdue = (text: string): Trust => say('use-with-care', 'check-overdue', text);
+  if (calibrationDueOn !== null)
+    return toDateInput(now, { timeZone }) > calibrationDueOn
+      ? overdue(`fitness not confirmed, due ${formatDay(calibrationDueOn)}`)
+      : null;
+  const dueAt = new Date(lastCheck.at.getTime() + point.intervalDays * fitness.overdueFactor * 86_400_000);
+  if (now <= dueAt) return null;
+  const on = formatDay(lastCheck.at, { timeZone });
+  return overdue(`${errorText(lastCheck)} on ${on}, due since ${formatDay(dueAt, { timeZone })}`);
 }
 
 function judgeDoubts({ reading, device }: TrustInput): Trust | null {

@@ -84,6 +84,7 @@ function trustInputOf(
           },
     hold: row.holdUserId === null ? null : { reason: row.holdReason!, untilAt: row.holdUntilAt! },
     lastCheck: latest ?? null,
+    calibrationDueOn: row.calibrationDueOn,
     fitness,
   };
 }

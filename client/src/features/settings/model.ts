@@ -44,6 +44,19 @@ export const SETTING_GROUPS: readonly SettingGroup[] = [
     ],
   },
   {
+    key: 'due-dates',
+    title: 'When work is announced',
+    note: 'to managers, by a line on their pages and a mail',
+    fields: [
+      {
+        name: 'dueSoonDays',
+        label: 'A calibration is due soon',
+        hint: 'Days before its date, 1 to 120.',
+        unit: 'days before',
+      },
+    ],
+  },
+  {
     key: 'check-uncertainty',
     title: 'What U takes for granted',
     note: 'in automatic checks, where no measured value is known',
