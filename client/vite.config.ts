@@ -9,7 +9,7 @@ const server = 'http://127.0.0.1:4280';
 const framework =
   /node_modules\/(react|react-dom|react-router|react-router-dom|scheduler|@tanstack|socket\.io|engine\.io)/;
 /** Chart.js is the only large library; it must never be part of the first load. */
-const charting = /node_modules\/(chart\.js|chartjs-|date-fns|@kurkle)/;
+const charting = /node_modules\/(chart\.js|react-chartjs-2|@kurkle)/;
 
 export default defineConfig({
   root: fileURLToPath(new URL('.', import.meta.url)),

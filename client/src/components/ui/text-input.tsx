@@ -2,7 +2,7 @@ import type { ComponentProps } from 'react';
 import { classNames } from './button.tsx';
 import { useFieldAttributes } from './field.tsx';
 
-/** One line of text; works with `register()` of react-hook-form. Also for passwords, mail addresses and dates. */
+/** One line of text. Also for passwords, mail addresses and dates. */
 export function TextInput({ className, ...rest }: ComponentProps<'input'>) {
   const wiring = useFieldAttributes(rest);
   return <input type="text" {...rest} {...wiring} className={classNames('control', className)} />;
