@@ -64,8 +64,8 @@ export const TRUST_REASON_LABELS: Words<TrustReason> = {
   'within-unsure': 'the last comparison was within, too close to be sure',
   'check-overdue': 'the next comparison is overdue',
   'never-compared': 'never compared with a reference solution',
-  'quality-doubtful': 'the device itself calls the reading doubtful',
   'value-unknown': 'the value at the reference temperature is unknown',
+  'quality-doubtful': 'the device itself calls the reading doubtful',
   'clock-doubtful': 'the device clock is doubtful',
   'as-compared': 'as last compared with a reference solution',
 };
