@@ -4,8 +4,8 @@ import type { Request, RequestHandler } from 'express';
 import session from 'express-session';
 import passport from 'passport';
 import { Strategy as LocalStrategy } from 'passport-local';
-import pg from 'pg';
 import { checkCredentials, findActor } from '../features/sessions/service.ts';
+import { openPool } from '../lib/pool.ts';
 import type { Parts } from '../parts.ts';
 import type { Actor, RequestSource } from './actor.ts';
 
@@ -37,8 +37,9 @@ export interface SessionKit {
 }
 
 export function createSessions(parts: Parts): SessionKit {
-  const pool = new pg.Pool({ connectionString: parts.config.databaseUrl, max: 4 });
-  pool.on('error', (error) => parts.log.warn({ err: error }, 'session store connection lost'));
+  const pool = openPool({ connectionString: parts.config.databaseUrl, max: 4 }, (error) =>
+    parts.log.warn({ err: error }, 'session store connection lost'),
+  );
   const store = new PgStore({
     pool,
     tableName: 'sessions',

@@ -1,5 +1,5 @@
 /** Starts the pipeline in reading order: directory, store, intake, broker; and stops it so that nothing acknowledged is lost. */
-import pg from 'pg';
+import { openPool } from '../lib/pool.ts';
 import type { Parts } from '../parts.ts';
 import { createAnnouncements } from './announcements.ts';
 import { openBroker } from './broker.ts';
@@ -38,14 +38,15 @@ const poolSize = 4;
 export async function startIngest(parts: Parts, limits: IngestLimits = {}): Promise<Ingest> {
   const { config, log } = parts;
   const nowMs = (): number => parts.clock.now().getTime();
-  const pool = new pg.Pool({
-    connectionString: config.databaseUrl,
-    max: poolSize,
-    application_name: 'saltmark ingest',
-    keepAlive: true,
-  });
-  // An idle connection that the server closes would otherwise end the process.
-  pool.on('error', (error) => log.warn({ err: error }, 'a database connection of ingest ended'));
+  const pool = openPool(
+    {
+      connectionString: config.databaseUrl,
+      max: poolSize,
+      application_name: 'saltmark ingest',
+      keepAlive: true,
+    },
+    (error) => log.warn({ err: error }, 'a database connection of ingest ended'),
+  );
 
   const directory = await DeviceDirectory.open({ pool, url: config.databaseUrl, log, nowMs });
   const activity = recordDeviceActivity(pool, log);

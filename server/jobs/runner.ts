@@ -1,6 +1,7 @@
 /** Runs each job on its schedule, in one instance of however many there are. */
 import cron from 'node-cron';
-import pg from 'pg';
+import type pg from 'pg';
+import { openPool } from '../lib/pool.ts';
 import type { Parts } from '../parts.ts';
 import { jobs as allJobs } from './definitions.ts';
 import type { Job } from './job.ts';
@@ -21,12 +22,14 @@ const failuresAllowed = 2;
 
 export async function startJobs(parts: Parts, jobs: readonly Job[] = allJobs): Promise<RunningJobs> {
   const { log, config } = parts;
-  const pool = new pg.Pool({
-    connectionString: config.databaseUrl,
-    max: poolSize,
-    application_name: 'saltmark jobs',
-  });
-  pool.on('error', (error) => log.warn({ err: error }, 'a database connection of the jobs ended'));
+  const pool = openPool(
+    {
+      connectionString: config.databaseUrl,
+      max: poolSize,
+      application_name: 'saltmark jobs',
+    },
+    (error) => log.warn({ err: error }, 'a database connection of the jobs ended'),
+  );
   const failures = new Map<string, number>();
   const running = new Set<Promise<RunOutcome>>();
 
