@@ -86,6 +86,7 @@ async function latency(program: Program, what: string): Promise<void> {
 }
 
 async function toBrowser(program: Program): Promise<void> {
+  const warmUpReadings = (steadyPerSecond * warmUpMs) / 1000;
   const sentAt = new Map<number, number>();
   const samples: number[] = [];
   const page = await openPage(program.httpUrl, siteId, ({ points }) => {
@@ -96,20 +97,19 @@ async function toBrowser(program: Program): Promise<void> {
     }
   });
   const devices: BenchDevice[] = await connectDevices(program.mqttUrl, names);
-  const total = steadyPerSecond * (seconds + warmUpMs / 1000);
   const latencies = await measureLatency({
     devices,
     perSecond: steadyPerSecond,
     seconds,
     conductivityFor: (index) => {
       const conductivityUsCm = 1000 + index / 1000;
-      sentAt.set(conductivityUsCm, performance.now());
+      if (index >= warmUpReadings) sentAt.set(conductivityUsCm, performance.now());
       return conductivityUsCm;
     },
   });
   await pause(500);
-  const seen: Latencies = summarise(samples.slice((steadyPerSecond * warmUpMs) / 1000));
-  const share = ((100 * samples.length) / total).toFixed(1);
+  const seen: Latencies = summarise(samples);
+  const share = ((100 * samples.length) / sentAt.size).toFixed(1);
   report({
     what: 'product, publish → browser event',
     perSecond: latencies.offeredPerSecond,

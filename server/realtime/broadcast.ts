@@ -44,7 +44,8 @@ export function createBroadcast(io: RealtimeServer | null): Broadcast {
     entry.timer = setTimeout(() => flush(probeId, entry), frameMs);
     let to = io!.to(rooms.probe(probeId));
     if (entry.siteId !== null) to = to.to(rooms.siteReadings(entry.siteId));
-    to.volatile.emit('readings', { probe: probeId, points });
+    // Not volatile: that drops every frame but the first of a turn, also on a fast line. The gateway ends slow pages.
+    to.emit('readings', { probe: probeId, points });
   };
 
   return {

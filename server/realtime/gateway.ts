@@ -34,8 +34,24 @@ const onHandshake =
     else next();
   };
 
+/** Frames that may wait for one page; a page on a slow line is ended beyond, connects again and fetches anew. */
+const maxWaitingFrames = 4000;
+const lookForSlowPagesMs = 2000;
+
+/** What waits for a browser lies in this process: without a limit one sleeping page would grow for ever. */
+function endSlowPages(io: RealtimeServer): NodeJS.Timeout {
+  return setInterval(() => {
+    for (const socket of io.sockets.sockets.values()) {
+      const { writeBuffer } = socket.conn as unknown as { writeBuffer: readonly unknown[] };
+      if (writeBuffer.length > maxWaitingFrames) socket.conn.close(true);
+    }
+  }, lookForSlowPagesMs).unref();
+}
+
 export function openGateway(io: RealtimeServer, http: HttpServer, parts: Parts, sessions: SessionKit): void {
   io.attach(http);
+  const watch = endSlowPages(io);
+  http.once('close', () => clearInterval(watch));
   io.engine.use(onHandshake(sessions.middleware));
   io.engine.use(onHandshake(sessions.passport));
   io.use((socket, next) => {

@@ -290,6 +290,15 @@ describe('readings', () => {
     expect(page.frames[0]?.points).toHaveLength(1);
   });
 
+  it('of forty probes in one turn all reach the page, none crowds out another', async () => {
+    const page = await openPage(await somebody('operator', here.id));
+    const probes = await Promise.all(Array.from({ length: 40 }, () => aProbe(here.id)));
+    await page.watch({ site: here.id });
+    for (const { id } of probes) parts.broadcast.readings(id, here.id, aPointAt(0));
+    await eventually(() => expect(page.frames.length).toBeGreaterThanOrEqual(40));
+    expect(new Set(page.frames.map((frame) => frame.probe))).toEqual(new Set(probes.map(({ id }) => id)));
+  });
+
   it('in a flood a frame holds the newest sixty and no more', async () => {
     const page = await openPage(await somebody('operator', here.id));
     const flooding = await aProbe(here.id);
