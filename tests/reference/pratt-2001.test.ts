@@ -1,6 +1,6 @@
 /**
  * Pratt, Koch, Wu, Berezansky, Pure Appl. Chem. 73 (2001) 1783, as reprinted in the CRC Handbook of Chemistry and Physics, p. 5-73.
- * Provenance: published (table read in the reprint; five entries confirmed by a second, independent transcription).
+ * Provenance: published (table read in the reprint; five entries confirmed by a second, independent copy).
  * ITS-90, absolute ohm, conductivity of the water subtracted.
  */
 import { describe, expect, it } from 'vitest';
@@ -38,13 +38,13 @@ describe('molal KCl standards', () => {
     expect(carbonDioxideWaterConductivity(t)).toBe(water);
   });
 
-  // Independent second transcription, in S/m or mS/cm: to its own last digit.
+  // Independent second copy, in S/m or mS/cm: to its own last digit.
   it.each([
     [0.1, 25, 12824, 1],
     [0.1, 5, 8183.7, 0.05],
     [0.1, 50, 19180.9, 0.05],
     [1, 25, 108620, 5],
-  ] as const)('%d mol/kg at %d degC agrees with the second transcription', (nominal, t, value, lastDigit) => {
+  ] as const)('%d mol/kg at %d degC agrees with the second copy', (nominal, t, value, lastDigit) => {
     expect(Math.abs(molal(nominal, t) - value)).toBeLessThan(lastDigit);
   });
 

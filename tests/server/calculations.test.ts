@@ -95,7 +95,10 @@ it('a plan says whether it can decide, and what to make smaller when it cannot',
     tolerancePercent: 2,
     rule: 'guarded-u',
   };
-  expect(await ask('planned-comparison', plan)).toMatchObject({ canDecide: true });
+  expect(await ask('planned-comparison', plan)).toMatchObject({
+    canDecide: true,
+    source: expect.stringMatching(/2001/) as string,
+  });
   const coarse = await ask('planned-comparison', { ...plan, temperatureStandardUncertaintyC: 1 });
   expect(coarse.canDecide).toBe(false);
   expect(coarse.sentence).toMatch(/largest part of U is the temperature/);

@@ -95,7 +95,10 @@ export async function planComparison(plan: PlannedComparison): Promise<PlannedAn
       acceptanceLimitPercent: method.acceptanceLimit,
       toleranceToUncertainty: method.toleranceToUncertainty,
       probabilityOutsideAtLimit: method.probabilityOutsideAtLimit,
-      source: result.referenceSource,
+      source:
+        solution.by === 'basis'
+          ? figureOfBasis({ ...solution, temperatureC: plan.temperatureC }).source
+          : result.referenceSource,
       budget: result.budget.map((row) => ({
         name: row.name,
         contributionPercent: row.contribution,
