@@ -3,6 +3,8 @@ import { finished } from 'node:stream/promises';
 import pg from 'pg';
 import { from as copyFrom } from 'pg-copy-streams';
 import { LiveReading } from '../../server/db/models/index.ts';
+import { writeWatermark } from '../../server/jobs/queries.ts';
+import { watermarkKey } from '../../server/jobs/roll-up-readings.ts';
 import { roundCellConstant } from '../../simulator/probe.ts';
 import { probeReadings, type HistoryRow } from '../../simulator/scenario/history.ts';
 import { cellConstantSteps } from './probes.ts';
@@ -68,7 +70,8 @@ export async function loadReadings(loading: Loading, url: string): Promise<numbe
     stream.end(text);
     await finished(stream);
     await client.query(rollUp);
-    await rememberRollups(client, history.endAt);
+    // The roll-up job goes on from here instead of starting over.
+    await writeWatermark(client, watermarkKey, new Date(history.endAt));
     await loadNewest(loading, newest);
     await client.query('ANALYZE readings, reading_rollups, checks').catch(() => undefined);
     return count;
@@ -82,14 +85,6 @@ const rollUp = `
   SELECT probe_id, date_bin('10 minutes', at, timestamptz '2000-01-01T00:00:00Z'), count(*),
          min(conductivity_us_cm), max(conductivity_us_cm), avg(conductivity_us_cm), avg(temperature_c)
   FROM readings WHERE context IN ('process', 'unknown') GROUP BY 1, 2`;
-
-/** The roll-up job goes on from here instead of starting over. */
-async function rememberRollups(client: pg.Client, endAt: number): Promise<void> {
-  await client.query(
-    `INSERT INTO settings (key, value) VALUES ('rollups-until', to_jsonb($1::text)) ON CONFLICT (key) DO NOTHING`,
-    [new Date(endAt).toISOString()],
-  );
-}
 
 async function loadNewest(loading: Loading, newest: Map<string, HistoryRow>): Promise<void> {
   const inService = loading.history.timelines.filter((timeline) => timeline.probe.status === 'in-service');
